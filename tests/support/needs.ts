@@ -112,12 +112,15 @@ export function itNeeds(
   timeoutMilliseconds?: number,
 ): void {
   const need = needs[name];
+  const runTest = async (): Promise<void> => {
+    await test();
+  };
   switch (fateOfTest(need, isContinuousIntegration)) {
     case 'run':
-      it(sentence, test, timeoutMilliseconds);
+      it(sentence, runTest, timeoutMilliseconds);
       return;
     case 'skip':
-      it.skip(`${sentence} [to run it: ${need.remedy}]`, test);
+      it.skip(`${sentence} [to run it: ${need.remedy}]`, runTest);
       return;
     case 'fail':
       it(sentence, () => {
