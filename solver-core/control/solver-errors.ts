@@ -10,6 +10,8 @@ export type InvalidProblemCode =
   | 'crossing-bounds'
   | 'impossible-bound'
   | 'wrong-length'
+  | 'malformed-matrix'
+  | 'duplicate-name'
   | 'integers-not-supported'
   | 'bad-option';
 
