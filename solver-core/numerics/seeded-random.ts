@@ -33,13 +33,13 @@ export class SeededRandom {
   }
 
   /** A number in [0, 1), a multiple of 2^−32. */
-  nextUnit(): number {
+  next(): number {
     return this.nextUint32() / 4294967296;
   }
 
   /** A whole number from `least` to `greatest`, both included; the slight bias of scaling is of no concern here. */
   nextInteger(least: number, greatest: number): number {
-    return least + Math.floor(this.nextUnit() * (greatest - least + 1));
+    return least + Math.floor(this.next() * (greatest - least + 1));
   }
 
   /** One of the choices. */
