@@ -4,6 +4,9 @@
 import type { CellAddress } from '../sheet/cell-address';
 import type { CellRange } from '../sheet/cell-range';
 import type { AffineForm } from '../linearization/affine-form';
+import type { DefiningRow } from '../linearization/defining-rows';
+
+export type { DefiningRow };
 
 export type PlanSense = 'minimise' | 'maximise';
 export type Relation = '<=' | '>=' | '=';
@@ -24,7 +27,10 @@ export interface DecisionCell {
 export interface DecisionBlock {
   /** 1 for `Decision`, 2 for `Decision2`, … */
   readonly number: number;
+  /** The smallest rectangle that holds the block. */
   readonly range: CellRange;
+  /** The block's rectangles in the order written: one, unless the name is a union. */
+  readonly ranges: readonly CellRange[];
   /** Positions in SheetModel.decisions of its first cell and one past its last; row by row. */
   readonly first: number;
   readonly end: number;
@@ -48,22 +54,20 @@ export interface ConstraintRow {
 }
 
 export interface ConstraintSet {
-  /** 1 for `Constraint` or `Left`, 2 for `Constraint2` or `Left2`, … */
+  /**
+   * 1 for `Constraint` or `Left`, 2 for `Constraint2` or `Left2`, …; unique. Where a block and parts have the same
+   * number in their names, the parts take the next free one. Labels and result names go by it.
+   */
   readonly number: number;
-  /** The name whose block the results stand beside: `Constraint` (whole block) or the three parts. */
+  /** The defined name of the block or of its left sides, as written: `Week.Constraint`, `Week.Left2`. */
+  readonly name: string;
+  /** How the rows stand in that block; `parts`: left sides, relations and right sides apart. */
   readonly form: 'formula' | 'coefficient' | 'parts';
   /** Upright: one line a sheet row. Lying: one line a sheet column. */
   readonly isLying: boolean;
-  /** The block, or the smallest range holding the left sides (parts apart). */
+  /** The smallest rectangle holding the block, or the left sides (parts apart). */
   readonly range: CellRange;
   readonly rows: readonly ConstraintRow[];
-}
-
-/** A cell turned into a free variable with a defining row: variable = form. */
-export interface DefiningRow {
-  readonly variable: number;
-  readonly cell: CellAddress;
-  readonly form: AffineForm;
 }
 
 export interface SheetModel {
