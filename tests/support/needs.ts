@@ -7,9 +7,10 @@
  */
 import { existsSync } from 'node:fs';
 import path from 'node:path';
+import { fileURLToPath } from 'node:url';
 
 /** The checkout's top folder. */
-export const checkoutFolder = path.resolve(__dirname, '..', '..');
+export const checkoutFolder = path.resolve(path.dirname(fileURLToPath(import.meta.url)), '..', '..');
 
 export type NeedName = 'lpFolder' | 'sheetFixtures' | 'browser' | 'libreOffice' | 'openssl' | 'coinSamples';
 
