@@ -133,25 +133,38 @@ export function verifyUnboundedRay(
 }
 
 /**
- * A copy of a Farkas ray whose components that call for a missing row bound are exactly 0, for the giver to call
- * before the ray is judged: it is judged as it is given out.
+ * A copy of a Farkas ray made fit to be given out: components that call for a missing row bound, and those that are
+ * noise beside the largest, are exactly 0. Any y may be tried as a proof, so nothing is hidden by it: the ray is to
+ * be judged afterwards, as it is given out.
  * @param y length m
  */
 export function withoutForbiddenComponents(problem: LinearProgram, y: ReadonlyFloat64Array): Float64Array {
+  const noise = tolerances.rayDrop * largestMagnitude(y);
   return Float64Array.from(y, (multiplier, row) => {
     const bound = multiplier > 0 ? problem.rowLower[row] : problem.rowUpper[row];
-    return Number.isFinite(bound) ? multiplier : 0;
+    return Math.abs(multiplier) <= noise || !Number.isFinite(bound) ? 0 : multiplier;
   });
 }
 
 /**
- * A copy of an unbounded ray whose components that move toward a bound which is there are exactly 0, for the giver.
+ * A copy of an unbounded ray made fit likewise: components that move toward a bound which is there, and those that
+ * are noise, are exactly 0.
  * @param ray length n
  */
 export function withoutBlockedComponents(problem: LinearProgram, ray: ReadonlyFloat64Array): Float64Array {
-  return Float64Array.from(ray, (rate, column) =>
-    overstep(rate, problem.columnLower[column], problem.columnUpper[column]) === 0 ? rate : 0,
-  );
+  const noise = tolerances.rayDrop * largestMagnitude(ray);
+  return Float64Array.from(ray, (rate, column) => {
+    const isBlocked = overstep(rate, problem.columnLower[column], problem.columnUpper[column]) !== 0;
+    return Math.abs(rate) <= noise || isBlocked ? 0 : rate;
+  });
+}
+
+function largestMagnitude(vector: ReadonlyFloat64Array): number {
+  let largest = 0;
+  for (const component of vector) {
+    largest = Math.max(largest, Math.abs(component));
+  }
+  return largest;
 }
 
 /** How fast a value that moves at this rate nears a bound that is there; 0 where none is in the way; NaN for NaN. */
