@@ -1,0 +1,111 @@
+/**
+ * Owner of z, the value of every variable, length n + m: nonbasic ones stand at a bound (free ones at 0), basic ones
+ * solve B z_B = −N z_N.
+ */
+import { VariableStatus } from '../linear-program/basis';
+import type { ReadonlyFloat64Array } from '../numerics/typed-array-views';
+import { ScatteredVector } from '../sparse/scattered-vector';
+import type { BasisFactorization } from '../factorization/basis-factorization';
+import type { ComputationalForm } from './computational-form';
+import type { WorkingBasis } from './working-basis';
+import type { WorkingBounds } from './working-bounds';
+
+export class PrimalValues {
+  private readonly z: Float64Array;
+  private readonly scratchColumn: ScatteredVector;
+
+  constructor(
+    private readonly form: ComputationalForm,
+    private readonly basis: WorkingBasis,
+    private readonly bounds: WorkingBounds,
+  ) {
+    this.z = new Float64Array(form.variableCount);
+    this.scratchColumn = new ScatteredVector(form.rowCount);
+  }
+
+  get value(): ReadonlyFloat64Array {
+    return this.z;
+  }
+
+  /** All values afresh from statuses and bounds. */
+  recompute(factorization: BasisFactorization): void {
+    const { form, basis, z, scratchColumn } = this;
+    const { columnStart, rowIndex, value } = form.matrix;
+    const right = scratchColumn.value;
+    right.fill(0);
+    for (let variable = 0; variable < form.variableCount; variable++) {
+      if (basis.status[variable] === VariableStatus.basic) continue;
+      const at = this.restingValue(variable);
+      z[variable] = at;
+      if (at === 0) continue;
+      if (variable >= form.columnCount) right[variable - form.columnCount] += at;
+      else {
+        for (let entry = columnStart[variable]; entry < columnStart[variable + 1]; entry++) {
+          right[rowIndex[entry]] -= value[entry] * at;
+        }
+      }
+    }
+    scratchColumn.count = -1;
+    factorization.ftran(scratchColumn);
+    for (let position = 0; position < form.rowCount; position++) z[basis.basicVariable[position]] = right[position];
+    right.fill(0);
+    scratchColumn.count = 0;
+  }
+
+  /** Moves the basic variables along a column: z_B −= step × direction. */
+  stepBasics(step: number, direction: ScatteredVector): void {
+    const { z } = this;
+    const { basicVariable } = this.basis;
+    if (direction.count < 0) {
+      for (let position = 0; position < this.form.rowCount; position++) {
+        z[basicVariable[position]] -= step * direction.value[position];
+      }
+      return;
+    }
+    for (let k = 0; k < direction.count; k++) {
+      const position = direction.index[k];
+      z[basicVariable[position]] -= step * direction.value[position];
+    }
+  }
+
+  set(variable: number, value: number): void {
+    this.z[variable] = value;
+  }
+
+  add(variable: number, step: number): void {
+    this.z[variable] += step;
+  }
+
+  /** Where a nonbasic variable stands. */
+  restingValue(variable: number): number {
+    switch (this.basis.status[variable]) {
+      case VariableStatus.atLower:
+        return this.bounds.lower[variable];
+      case VariableStatus.atUpper:
+        return this.bounds.upper[variable];
+      default:
+        return 0;
+    }
+  }
+
+  /** By how much a variable lies outside its bounds; 0 inside. */
+  infeasibility(variable: number): number {
+    const at = this.z[variable];
+    return Math.max(0, this.bounds.lower[variable] - at, at - this.bounds.upper[variable]);
+  }
+
+  /** Sum and greatest of the basic variables' infeasibilities above a tolerance. */
+  infeasibilities(tolerance: number): { sum: number; count: number; largest: number } {
+    let sum = 0;
+    let count = 0;
+    let largest = 0;
+    for (let position = 0; position < this.form.rowCount; position++) {
+      const amount = this.infeasibility(this.basis.basicVariable[position]);
+      if (amount <= tolerance) continue;
+      sum += amount;
+      count++;
+      largest = Math.max(largest, amount);
+    }
+    return { sum, count, largest };
+  }
+}

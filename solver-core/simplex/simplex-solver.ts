@@ -1,0 +1,214 @@
+/**
+ * Solves a computational form with the dual and the primal algorithm: dual phase one where it is needed, dual phase
+ * two with perturbed costs, then the primal algorithm for what the perturbation hid. Advances by work units.
+ *
+ * What each stage does when it ends is in one place, `follow`; every change of stage is counted.
+ */
+import { tolerances } from '../control/tolerances';
+import type { WorkMeter } from '../control/work-meter';
+import type { Basis } from '../linear-program/basis';
+import type { ComputationalForm } from './computational-form';
+import { DualSimplex } from './dual-simplex';
+import { loadLogicalBasis, loadSnapshot } from './initial-basis';
+import type { LoopEnd } from './loop-end';
+import { PrimalSimplex } from './primal-simplex';
+import { SimplexIterate } from './simplex-iterate';
+
+export interface SimplexSettings {
+  readonly startBasis?: Basis | undefined;
+  /** Absolute, in the space of the form. */
+  readonly primalTolerance: number;
+  readonly dualTolerance: number;
+  readonly iterationLimit: number;
+  /** Perturb the costs at the start: for a cold start. */
+  readonly perturbsCosts: boolean;
+}
+
+export type SimplexStage = 'dual phase one' | 'dual' | 'primal';
+
+/** How the simplex ends on this form. Rays are in the space of the form, unchecked. */
+export type SimplexEnd =
+  | { readonly kind: 'optimal' }
+  | { readonly kind: 'infeasible'; readonly ray: Float64Array }
+  | { readonly kind: 'unbounded'; readonly direction: Float64Array }
+  | { readonly kind: 'limit' }
+  | { readonly kind: 'trouble'; readonly reason: string };
+
+/** Changes of stage after which the solver gives up: each is a new attempt at what the last one left. */
+const mostStageChanges = 40;
+/** Size of the relaxation of bounds against stalls, relative. */
+const relaxation = 1e-6;
+
+export class SimplexSolver {
+  readonly iterate: SimplexIterate;
+  private readonly dual: DualSimplex;
+  private readonly primal: PrimalSimplex;
+  private currentStage: SimplexStage = 'dual';
+  private isStarted = false;
+  private stageChanges = 0;
+  private timesRelaxed = 0;
+
+  constructor(
+    private readonly form: ComputationalForm,
+    private readonly settings: SimplexSettings,
+  ) {
+    this.iterate = new SimplexIterate(form);
+    this.dual = new DualSimplex(this.iterate);
+    this.primal = new PrimalSimplex(this.iterate);
+  }
+
+  /** Values and multipliers can be had: the first factorization is done. */
+  get isFactorized(): boolean {
+    return this.isStarted;
+  }
+
+  get stage(): SimplexStage {
+    return this.currentStage;
+  }
+
+  /** Spends the granted work. @returns undefined when it is spent before an end is known */
+  advance(meter: WorkMeter): SimplexEnd | undefined {
+    if (!this.isStarted) this.start();
+    for (;;) {
+      const end = this.runStage(meter);
+      if (end === 'paused') return undefined;
+      const outcome = this.follow(end);
+      if (outcome !== undefined) return outcome;
+      if (++this.stageChanges > mostStageChanges) {
+        return { kind: 'trouble', reason: `no end after ${mostStageChanges} changes of algorithm` };
+      }
+    }
+  }
+
+  private start(): void {
+    const { iterate, settings, form } = this;
+    this.isStarted = true;
+    if (settings.startBasis === undefined) loadLogicalBasis(form, iterate.basis);
+    else loadSnapshot(form, settings.startBasis, iterate.basis);
+    if (settings.perturbsCosts) iterate.costs.perturb(1);
+    iterate.refactorize();
+    iterate.restAtRightBounds();
+    if (iterate.reduced.infeasibilities(settings.dualTolerance).count > 0) this.enterDualPhaseOne();
+    else this.currentStage = 'dual';
+  }
+
+  private runStage(meter: WorkMeter): LoopEnd {
+    const { primalTolerance, dualTolerance, iterationLimit } = this.settings;
+    if (this.currentStage === 'primal') {
+      return this.primal.run(meter, primalTolerance, dualTolerance, iterationLimit);
+    }
+    return this.dual.run(meter, primalTolerance, iterationLimit);
+  }
+
+  /** What comes after a stage: another stage (undefined) or the end. */
+  private follow(end: LoopEnd): SimplexEnd | undefined {
+    if (end === 'limit') return { kind: 'limit' };
+    switch (this.currentStage) {
+      case 'dual phase one':
+        return this.afterDualPhaseOne();
+      case 'dual':
+        return this.afterDual(end);
+      case 'primal':
+        return this.afterPrimal(end);
+    }
+  }
+
+  private afterDualPhaseOne(): undefined {
+    const { iterate, settings } = this;
+    iterate.bounds.restore();
+    iterate.restAtRightBounds();
+    if (iterate.reduced.infeasibilities(settings.dualTolerance).count === 0) {
+      this.currentStage = 'dual';
+      return;
+    }
+    if (iterate.costs.kind !== 'stated') {
+      iterate.costs.restore();
+      iterate.reduced.recompute(iterate.factorization);
+      iterate.restAtRightBounds();
+      if (iterate.reduced.infeasibilities(settings.dualTolerance).count === 0) {
+        this.currentStage = 'dual';
+        return;
+      }
+    }
+    this.enterPrimal(); // no dual feasible basis: the objective is unbounded if there is a feasible point
+  }
+
+  private afterDual(end: LoopEnd): SimplexEnd | undefined {
+    const { iterate, settings } = this;
+    if (end === 'infeasible') {
+      const ray = this.dual.infeasibleRow.value.slice();
+      const sign = this.dual.infeasibleSign;
+      for (let row = 0; row < ray.length; row++) ray[row] *= sign;
+      return { kind: 'infeasible', ray };
+    }
+    if (iterate.costs.kind !== 'stated') {
+      iterate.costs.restore();
+      iterate.reduced.recompute(iterate.factorization);
+    }
+    if (end === 'optimal' && iterate.reduced.infeasibilities(settings.dualTolerance).count === 0) return { kind: 'optimal' };
+    if (end !== 'optimal') iterate.factorization.tightenThreshold();
+    this.enterPrimal();
+    return undefined;
+  }
+
+  private afterPrimal(end: LoopEnd): SimplexEnd | undefined {
+    const { iterate, primal } = this;
+    if (end === 'stalled') return this.afterStall();
+    if (iterate.bounds.kind === 'relaxed') {
+      // Whatever was found, it was found for slightly wider bounds: back to the stated ones.
+      iterate.bounds.restore();
+      iterate.costs.restore();
+      iterate.refactorize();
+      if (end === 'optimal') {
+        const { primalTolerance } = this.settings;
+        if (iterate.primal.infeasibilities(primalTolerance).count === 0) return { kind: 'optimal' };
+        this.dual.weights.reset();
+        this.currentStage = 'dual';
+        return undefined;
+      }
+      this.enterPrimal();
+      return undefined;
+    }
+    switch (end) {
+      case 'optimal':
+        return { kind: 'optimal' };
+      case 'unbounded':
+        return { kind: 'unbounded', direction: primal.unboundedDirection() };
+      case 'infeasible':
+        return { kind: 'infeasible', ray: primal.infeasibleRay() };
+      default:
+        return { kind: 'trouble', reason: 'no pivot could be trusted' };
+    }
+  }
+
+  /** First slightly wider bounds, then the least-number rule, which ends for certain. */
+  private afterStall(): undefined {
+    const { iterate, primal } = this;
+    iterate.bounds.restore();
+    if (this.timesRelaxed < 3) {
+      this.timesRelaxed++;
+      iterate.bounds.relax(this.timesRelaxed, relaxation);
+    } else {
+      primal.usesLeastNumberRule = true;
+      primal.reportsStalls = false;
+    }
+    iterate.recompute();
+    primal.restart();
+  }
+
+  private enterDualPhaseOne(): void {
+    this.currentStage = 'dual phase one';
+    this.iterate.bounds.boxForPhaseOne();
+    this.iterate.restAtRightBounds();
+  }
+
+  private enterPrimal(): void {
+    this.currentStage = 'primal';
+    this.primal.restart();
+  }
+
+  /** Sum of primal infeasibilities, for progress reports. */
+  primalInfeasibility(): number {
+    return this.iterate.primal.infeasibilities(tolerances.primalFeasibility).sum;
+  }
+}
