@@ -42,10 +42,15 @@ export const tolerances = {
   /** Final acceptance, stated space: duality gap relative to 1 + |objective| (design §7). */
   acceptedDualityGap: 1e-8,
   /**
-   * Rays, stated space: may this component of Aᵀ y, of A v or of cost · v pass for 0? Relative to the largest term of
-   * its sum. Reason: noise of cancellation, two digits below what is accepted of a violation.
+   * Unbounded rays v, stated space: may this component of A v, or cost · v, pass for 0? Relative to the largest term
+   * of its sum. Reason: noise of cancellation, two digits below what is accepted of a violation.
    */
   rayNoise: 1e-9,
+  /**
+   * Farkas rays y, stated space: may this component of Aᵀ y pass for 0 on a bound that is not there? Relative to the
+   * largest term of its sum. Reason: on the Netlib infeasible set what is left is at most 2e-16; five digits of room.
+   */
+  farkasNoise: 1e-11,
   /**
    * Rays before they are judged, stated space: which components are noise to be set to 0? Relative to the largest.
    * Reason: a few thousand roundings of a number of the size of the largest.
@@ -58,9 +63,10 @@ export const tolerances = {
   rayMargin: 1e-13,
   /**
    * Farkas rays that rest on a component which is only nearly 0 on a bound that is not there: up to what amount of
-   * that column must the proof hold? Absolute, in the column's unit. Reason: no quantity in a plan is that large.
+   * that column must the proof hold? Absolute, in the column's unit. Reason: no quantity in a plan is that large; on
+   * the Netlib infeasible set proofs reach to 2e14 and beyond.
    */
-  rayReach: 1e9,
+  rayReach: 1e10,
 } as const;
 
 export type Tolerances = typeof tolerances;

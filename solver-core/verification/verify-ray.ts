@@ -14,7 +14,7 @@
  * noise simply counts: it is multiplied by the bound and works against the proof. On a bound that is not there it
  * would undo the proof altogether, though what it shows is only that x would have to be immense. There, and only
  * there, g_j counts as 0, if both
- *   - it is noise: |g_j| ≤ rayNoise × the largest |a_ij y_i| it is the sum of; and
+ *   - it is noise: |g_j| ≤ farkasNoise × the largest |a_ij y_i| it is the sum of; and
  *   - the proof reaches far enough: no x whose dropped components stay below rayReach in magnitude satisfies the
  *     problem, that is, rayReach × Σ dropped |g_j| is still less than the margin between the two sides.
  * The margin itself must exceed rayMargin × the largest term of the two sums, since the terms are rounded doubles.
@@ -77,7 +77,7 @@ export function verifyFarkasRay(problem: LinearProgram, y: ReadonlyFloat64Array)
     const bound = component > 0 ? columnUpper[column] : columnLower[column];
     if (Number.isFinite(bound)) {
       take(-component, bound);
-    } else if (Math.abs(component) <= tolerances.rayNoise * largestTerms[column]) {
+    } else if (Math.abs(component) <= tolerances.farkasNoise * largestTerms[column]) {
       dropped += Math.abs(component);
     } else {
       return refusal(`Column "${columnNames[column]}" has not the bound that its component calls for.`);
