@@ -10,7 +10,8 @@
 import { maximumColumnCount, maximumRowCount, type CellAddress } from '../sheet/cell-address';
 import { containsCell, rangesOverlap, type CellRange } from '../sheet/cell-range';
 import type { WorkbookSnapshot } from '../sheet/sheet-snapshot';
-import { namedRangesOf, referencedRangesOf } from './referenced-ranges';
+import { forEachMeaningfulRange } from './referenced-ranges';
+import { rangeOfCell } from './result-lines';
 
 /** How far from the block results may stand: further away nobody reads them together. */
 export const searchedLaneCount = 30;
@@ -146,20 +147,13 @@ export function searchFreeLanes(
   for (const request of requests) {
     fillAll(windows, request.range);
   }
-  for (const range of namedRangesOf(workbook)) {
-    for (const window of windows) {
-      if (!window.isOwn(range)) {
-        window.block(range);
-      }
-    }
-  }
-  for (const range of referencedRangesOf(workbook)) {
+  forEachMeaningfulRange(workbook, (range) => {
     for (const window of windows) {
       if (window.sheet === range.sheet && !window.isOwn(range)) {
         window.block(range);
       }
     }
-  }
+  });
   return windows;
 }
 
@@ -222,8 +216,4 @@ function fillAll(windows: readonly LaneWindow[], range: CellRange): void {
   for (const window of windows) {
     window.fill(range);
   }
-}
-
-function rangeOfCell(cell: CellAddress): CellRange {
-  return { sheet: cell.sheet, top: cell.row, left: cell.column, bottom: cell.row, right: cell.column };
 }

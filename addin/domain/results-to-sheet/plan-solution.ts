@@ -9,7 +9,7 @@
  * with the constants on the right), so multipliers pass through unchanged.
  */
 import type { AffineForm } from '../linearization/affine-form';
-import type { ConstraintRow, SheetModel } from '../model-from-sheet/sheet-model';
+import type { ConstraintRow, Relation, SheetModel } from '../model-from-sheet/sheet-model';
 import { resultTolerances } from './result-tolerances';
 
 /** What a solver found, by the parts of the model and not by rows and columns of a linear program. */
@@ -34,6 +34,8 @@ export interface ConstraintSolution {
   readonly dualValue: number;
   /** Slack is 0: the row limits the plan, or at least touches it. */
   readonly isBinding: boolean;
+  /** 1 + the largest term of the two sides: what a difference in them is relative to. */
+  readonly scale: number;
 }
 
 export interface PlanSolution {
@@ -123,22 +125,23 @@ function constraintSolutionAt(
 ): ConstraintSolution {
   const left = evaluateForm(row.left, variables);
   const right = evaluateForm(row.right, variables);
-  const slack = slackOf(row, left, right);
+  const scale = 1 + Math.max(left.largestTerm, right.largestTerm);
+  const slack = slackOf(row.relation, left.value, right.value, scale);
   return {
     leftSide: withoutNegativeZero(left.value),
     rightSide: withoutNegativeZero(right.value),
     slack,
     dualValue: withoutNegativeZero(dualValue),
     isBinding: slack <= 0,
+    scale,
   };
 }
 
-function slackOf(row: ConstraintRow, left: EvaluatedForm, right: EvaluatedForm): number {
-  if (row.relation === '=') {
+function slackOf(relation: Relation, left: number, right: number, scale: number): number {
+  if (relation === '=') {
     return 0;
   }
-  const slack = row.relation === '<=' ? right.value - left.value : left.value - right.value;
-  const scale = 1 + Math.max(left.largestTerm, right.largestTerm);
+  const slack = relation === '<=' ? right - left : left - right;
   const isRounding =
     slack <= resultTolerances.slackRounding * scale && slack >= -resultTolerances.acceptedViolation * scale;
   return isRounding ? 0 : slack;

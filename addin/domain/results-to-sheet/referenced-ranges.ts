@@ -1,0 +1,31 @@
+/**
+ * Cells that mean something to the workbook though they may be blank: those that a formula refers to (a value written
+ * there would change its result), and those that a defined name calls its own.
+ */
+import type { CellRange } from '../sheet/cell-range';
+import type { WorkbookSnapshot } from '../sheet/sheet-snapshot';
+import { referencesOfFormula } from '../formula/formula-references';
+
+/**
+ * What is printed and which rows repeat on each page is no block of cells: a print area holds whatever stands in it,
+ * and repeated rows reach across the whole sheet.
+ */
+const printNames = /^_xlnm\.Print_(Area|Titles)$/i;
+
+/** Visits every range that a formula or a defined name refers to; the same range maybe often. */
+export function forEachMeaningfulRange(workbook: WorkbookSnapshot, visit: (range: CellRange) => void): void {
+  for (const sheet of workbook.sheets) {
+    sheet.forEachCell((row, column, cell) => {
+      if (cell.formula !== undefined) {
+        const home = { sheet: sheet.name, row, column };
+        referencesOfFormula(workbook, cell.formula, home).ranges.forEach(visit);
+      }
+    });
+  }
+  for (const name of workbook.names) {
+    if (!printNames.test(name.name)) {
+      const home = { sheet: name.scope ?? '', row: 0, column: 0 };
+      referencesOfFormula(workbook, name.formula, home).ranges.forEach(visit);
+    }
+  }
+}
