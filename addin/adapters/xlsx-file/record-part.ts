@@ -3,7 +3,11 @@
  * relationships, so that a copy saved by another program still has it (ECMA-376 Part 1, §15.2.4).
  */
 import type { PackageParts } from './package-parts';
-import type { XmlNode } from './xml-tree';
+import { asOpenTag } from './start-tag';
+import { TextSplices } from './text-splices';
+import type { XmlSource } from './xml-events';
+import { escapeXmlText } from './xml-escapes';
+import { parseXmlTree, type XmlNode } from './xml-tree';
 
 export const recordNamespace = 'urn:planrow:record:1';
 
@@ -28,4 +32,44 @@ async function customXmlRoot(parts: PackageParts, part: string): Promise<XmlNode
   } catch {
     return undefined;
   }
+}
+
+/** The record's part with another JSON text in it. */
+export function recordText(source: XmlSource, json: string): string {
+  const root = parseXmlTree(source);
+  const splices = new TextSplices(source.text);
+  const content = escapeXmlText(withoutIllegalCharacters(json));
+  if (root.tag.isSelfClosing) {
+    const tag = asOpenTag(source.text.slice(root.start, root.end));
+    splices.replace(root.start, root.end, `${tag}${content}</${root.tag.name}>`);
+  } else {
+    splices.replace(root.contentStart, root.contentEnd, content);
+  }
+  return splices.apply();
+}
+
+/** The parts of a record that a workbook has not got yet: the item itself, and the one that names its namespace. */
+export function newRecordParts(json: string): { item: string; properties: string } {
+  const declaration = '<?xml version="1.0" encoding="UTF-8" standalone="yes"?>\n';
+  const content = escapeXmlText(withoutIllegalCharacters(json));
+  return {
+    item: `${declaration}<record xmlns="${recordNamespace}">${content}</record>`,
+    properties:
+      `${declaration}<ds:datastoreItem ds:itemID="${recordItemId}" xmlns:ds="${customXmlNamespace}">` +
+      `<ds:schemaRefs><ds:schemaRef ds:uri="${recordNamespace}"/></ds:schemaRefs></ds:datastoreItem>`,
+  };
+}
+
+export const recordPropertiesType = 'application/vnd.openxmlformats-officedocument.customXmlProperties+xml';
+
+/** One record a workbook, so that one number serves them all; it must only differ from other programs' numbers. */
+const recordItemId = '{6C1F0B52-9E4D-4A37-8B66-2D90A7E3C514}';
+const customXmlNamespace = 'http://schemas.openxmlformats.org/officeDocument/2006/customXml';
+
+/** In JSON such characters stand only inside strings, where an escape means the same. */
+function withoutIllegalCharacters(json: string): string {
+  return json.replace(
+    /[\uFFFE\uFFFF]|[\uD800-\uDBFF](?![\uDC00-\uDFFF])|(?<![\uD800-\uDBFF])[\uDC00-\uDFFF]/g,
+    (character) => `\\u${character.charCodeAt(0).toString(16).padStart(4, '0')}`,
+  );
 }

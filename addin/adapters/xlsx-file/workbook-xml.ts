@@ -19,6 +19,8 @@ export interface SheetEntry {
 
 export interface WorkbookPart {
   readonly part: string;
+  /** The form of the standard that it is written in: the namespace of its elements. */
+  readonly namespace: string;
   readonly sheets: readonly SheetEntry[];
   readonly names: readonly DefinedName[];
   readonly usesDates1904: boolean;
@@ -63,6 +65,7 @@ export async function readWorkbookPart(parts: PackageParts, part: string): Promi
   const properties = childOf(root, 'workbookPr', mainNamespaces);
   return {
     part,
+    namespace: root.tag.uri,
     sheets,
     names: readNames(parts.fileName, root, sheets),
     usesDates1904: properties !== undefined && isOn(attributeOf(properties.tag, 'date1904')),
