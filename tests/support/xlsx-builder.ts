@@ -55,6 +55,8 @@ export interface SheetDescription {
   readonly xmlAfterCells?: string | undefined;
   /** XML put before the sheet's cells (views, column widths, …). */
   readonly xmlBeforeCells?: string | undefined;
+  /** Further relationships of the sheet: id, last segment of the type, target. */
+  readonly relationships?: readonly (readonly [id: string, kind: string, target: string])[] | undefined;
 }
 
 export interface TableDescription {
@@ -79,6 +81,10 @@ export interface XlsxDescription {
   readonly hasInlineStrings?: boolean | undefined;
   /** Further parts, or parts to stand in place of the ones made here, by their name in the package. */
   readonly parts?: Readonly<Record<string, string | Uint8Array>> | undefined;
+  /** Content types of such parts. */
+  readonly contentTypes?: Readonly<Record<string, string>> | undefined;
+  /** Further relationships of the workbook: last segment of the type, target. */
+  readonly workbookRelationships?: readonly (readonly [kind: string, target: string])[] | undefined;
 }
 
 const declaration = '<?xml version="1.0" encoding="UTF-8" standalone="yes"?>\n';
@@ -110,6 +116,9 @@ export function xlsxParts(description: XlsxDescription): Map<string, string | Ui
       relationships.push(`<Relationship Id="${id}" Type="${relationshipsOf}/${kind}" Target="${target}"/>`);
       return id;
     };
+    for (const [id, kind, target] of sheet.relationships ?? []) {
+      relationships.push(`<Relationship Id="${id}" Type="${relationshipsOf}/${kind}" Target="${target}"/>`);
+    }
     let after = '';
     if (sheet.isProtected) after += '<sheetProtection sheet="1" objects="1" scenarios="1"/>';
     if (sheet.filterRange !== undefined) {
@@ -190,6 +199,9 @@ export function xlsxParts(description: XlsxDescription): Map<string, string | Ui
     relateWorkbook('sharedStrings', 'sharedStrings.xml');
     overrides.push(override('xl/sharedStrings.xml', `${spreadsheetType}.sharedStrings+xml`));
   }
+  for (const [kind, target] of description.workbookRelationships ?? []) relateWorkbook(kind, target);
+  for (const [part, type] of Object.entries(description.contentTypes ?? {}))
+    overrides.push(override(part, type));
   overrides.push(override('xl/workbook.xml', `${spreadsheetType}.sheet.main+xml`));
 
   const whole = new Map<string, string | Uint8Array>([
