@@ -31,7 +31,7 @@ export function formulaSentence(issue: FormulaModelIssue): string {
     case 'stored-value-differs':
       return `${place} shows ${text('stored')}, but its formula gives ${text('evaluated')}. Have the workbook calculated again and check the cell.`;
     case 'model-disagrees':
-      return `The plan read from ${place} gives ${text('model')} where the workbook's own formulas give ${text('evaluated')}. The plan is not solved, because it may have been misread; please report this formula.`;
+      return `The plan read from ${place} gives ${text('model')} where the workbook’s own formulas give ${text('evaluated')}. The plan is not solved, because it may have been misread; please report this formula.`;
   }
 }
 

@@ -89,7 +89,7 @@ function layOutBlock(
     return undefined;
   }
   const isLying = upright === undefined || (lying !== undefined && relationsLie(upright, lying, reader));
-  const lines = isLying ? lying! : upright!;
+  const lines = isLying ? lying! : upright;
   const length = lines[0].lefts.length + 2;
   const isFormGuessed = length === 3 && decisionCount === 1;
   const isFormula = isFormGuessed

@@ -79,8 +79,8 @@ interface Candidate {
 }
 
 /**
- * Texts that alone tell a block's cells apart where there are such: those beside an upright block, those above a
- * lying one; for a grid both.
+ * The texts beside an upright block, or above a lying one, where they tell its cells apart; joined with those of the
+ * other direction where they do not, as in a grid; those of the other direction where there are no others.
  */
 function labelsWithinGroup(group: LabelGroup, candidates: readonly Candidate[]): string[] {
   const first = (candidate: Candidate): string | undefined =>
@@ -88,13 +88,13 @@ function labelsWithinGroup(group: LabelGroup, candidates: readonly Candidate[]):
   const second = (candidate: Candidate): string | undefined =>
     group.isLying ? candidate.row : candidate.column;
   const found = candidates.filter((candidate) => candidate.named === undefined);
-  const rule = [first, second].find((text) => tellsApart(found.map(text)));
-  const fallback = (candidate: Candidate): string | undefined =>
-    tellsMore(found.map(first), found.map(bothTexts)) ? bothTexts(candidate) : first(candidate);
+  const distinctOf = (text: (candidate: Candidate) => string | undefined): number =>
+    new Set(found.map(text)).size;
+  const isJoined = distinctOf(first) < found.length && distinctOf(bothTexts) > distinctOf(first);
   return candidates.map(
     (candidate, i) =>
       candidate.named ??
-      (rule ?? fallback)(candidate) ??
+      (isJoined ? bothTexts(candidate) : first(candidate)) ??
       second(candidate) ??
       formatCellAddress(group.subjects[i].ownCell),
   );
@@ -102,14 +102,6 @@ function labelsWithinGroup(group: LabelGroup, candidates: readonly Candidate[]):
 
 function bothTexts({ row, column }: Candidate): string | undefined {
   return row === undefined || column === undefined || row === column ? (row ?? column) : `${row} · ${column}`;
-}
-
-function tellsApart(texts: readonly (string | undefined)[]): boolean {
-  return !texts.includes(undefined) && new Set(texts).size === texts.length;
-}
-
-function tellsMore(few: readonly (string | undefined)[], more: readonly (string | undefined)[]): boolean {
-  return new Set(more).size > new Set(few).size;
 }
 
 /** Which groups have a label that stands in another group too. */

@@ -162,10 +162,10 @@ class DeclarationReader {
       .filter((area): area is NamedArea => area !== undefined);
   }
 
-  /** The areas of a role that goes by decision blocks; one for a block that is not there is an error. */
+  /** The areas of a role that goes by decision blocks; one for a further block that is not there is an error. */
   private areasForBlocks(role: StatementRole): NamedArea[] {
     for (const [number, { definedName }] of this.named(role)) {
-      if (!this.named('Decision').has(number)) {
+      if (number > 1 && !this.named('Decision').has(number)) {
         const facts = { name: definedName.name, block: this.nameOf('Decision', number) };
         this.issues.push(statementIssue('name-without-block', null, facts));
       }

@@ -26,8 +26,8 @@ function withoutRepeats(issues: readonly ModelIssue[]): ModelIssue[] {
   return issues.filter(({ code, cell, facts }) => {
     const place = cell === null ? '' : `${cell.sheet}\n${cell.row}\n${cell.column}`;
     // A formula's fault is the same whichever row found it, though the chain of cells that leads there differs.
-    const { chain: _chain, ...rest } = facts as Readonly<Record<string, unknown>>;
-    const key = `${code}\n${place}\n${JSON.stringify(rest)}`;
+    const told = JSON.stringify(facts, (fact, value: unknown) => (fact === 'chain' ? undefined : value));
+    const key = `${code}\n${place}\n${told}`;
     const isNew = !seen.has(key);
     seen.add(key);
     return isNew;
