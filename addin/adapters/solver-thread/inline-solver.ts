@@ -22,7 +22,9 @@ export interface Pacing {
 /** Milliseconds that a slice should take: short enough for a stop to be felt at once, long against a pause. */
 const sliceMilliseconds = 40;
 /** Work units of the first slice: some milliseconds on a slow machine. */
-const firstSlice = 1_000_000;
+const firstSlice = 10_000;
+/** No slice is smaller: below this, pauses would cost more than the work. */
+const smallestSlice = 1_000;
 /** A slice is at most this many times the one before, since a single short one says little. */
 const greatestGrowth = 4;
 
@@ -48,7 +50,7 @@ export class InlineSolver implements Solver {
         }
         const elapsed = this.pacing.now() - startedAt;
         const wanted = (slice * sliceMilliseconds) / Math.max(elapsed, 1);
-        slice = Math.round(Math.max(firstSlice / 10, Math.min(wanted, slice * greatestGrowth)));
+        slice = Math.round(Math.max(smallestSlice, Math.min(wanted, slice * greatestGrowth)));
         onProgress?.(step.progress);
         await this.pacing.pause();
       }
