@@ -46,7 +46,7 @@ export class CellReader {
     targets: readonly CellAddress[],
     now: number,
   ) {
-    const filled = this.filledOnce(targets);
+    const filled = this.filledOnce(targets, decisions);
     const linearization = linearize({ workbook, decisions, targets: filled, now });
     this.definingRows = linearization.definingRows;
     filled.forEach((cell, i) => {
@@ -133,19 +133,31 @@ export class CellReader {
     return readings;
   }
 
-  /** The targets that hold anything, none twice: a blank cell of a block needs no reading. */
-  private filledOnce(targets: readonly CellAddress[]): CellAddress[] {
-    const seen = new Map<string, Set<number>>();
-    return targets.filter((cell) => {
-      const key = cellKey(cell.row, cell.column);
-      const ofSheet = seen.get(cell.sheet) ?? new Set<number>();
-      seen.set(cell.sheet, ofSheet);
-      if (ofSheet.has(key) || this.cellAt(cell) === undefined) {
-        return false;
-      }
-      ofSheet.add(key);
-      return true;
-    });
+  /** The targets that say anything, none twice: what a block's cell holds, or that it is a decision cell, blank or not. */
+  private filledOnce(targets: readonly CellAddress[], decisions: readonly CellAddress[]): CellAddress[] {
+    const areDecisions = new CellSet();
+    decisions.forEach((cell) => areDecisions.add(cell));
+    const seen = new CellSet();
+    return targets.filter(
+      (cell) => (this.cellAt(cell) !== undefined || areDecisions.has(cell)) && seen.add(cell),
+    );
+  }
+}
+
+/** Cells of a workbook, each once. */
+class CellSet {
+  private readonly bySheet = new Map<string, Set<number>>();
+
+  /** @returns whether the cell is new */
+  add(cell: CellAddress): boolean {
+    const keys = this.bySheet.get(cell.sheet) ?? new Set<number>();
+    this.bySheet.set(cell.sheet, keys);
+    const size = keys.size;
+    return keys.add(cellKey(cell.row, cell.column)).size > size;
+  }
+
+  has(cell: CellAddress): boolean {
+    return this.bySheet.get(cell.sheet)?.has(cellKey(cell.row, cell.column)) === true;
   }
 }
 

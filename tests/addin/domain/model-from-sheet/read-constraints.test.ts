@@ -300,6 +300,15 @@ describe('parts apart', () => {
     ]);
   });
 
+  it('AD-23 may be decision cells themselves, blank as they are', () => {
+    const names = { ...parts, 'Week.Left': 'plan!$B$2:$B$4' };
+    expect(statedRows({ names })).toEqual([
+      [{ 'Floor matt': 1 }, '<=', { '1': 80 }],
+      [{ 'Wall gloss': 1 }, '<=', { '1': 120 }],
+      [{ Border: 1 }, '>=', { '1': 15 }],
+    ]);
+  });
+
   it('AD-24 pass over blanks and headings', () => {
     const cells = { B8: 'Orders', C8: null, D8: null };
     expect(statedRows({ cells, names: parts })).toEqual([pressRow, orderRow]);
