@@ -44,7 +44,7 @@ export function readXml(source: XmlSource, handlers: XmlHandlers): void {
   });
   parser.on('error', (error) => {
     // The parser puts line and column before its message.
-    const reason = excerpt(error.message.replace(/^.*?\d+:\d+: /, ''));
+    const reason = excerpt(error.message.replace(/^.*?\d+:\d+: |\.$/g, ''));
     throw damagedFile(
       source.fileName,
       `its part ${excerpt(source.part)} is not well-formed (${reason})`,
