@@ -15,7 +15,7 @@ export function solverFigures(
   objective: number | null,
   workbookObjective: number | null,
 ): SolverFigures {
-  const bound = boundOf(result);
+  const bound = boundOf(result, objective);
   const residuals = result.status === 'optimal' || result.status === 'imprecise' ? result.residuals : null;
   return {
     bound,
@@ -33,11 +33,11 @@ export function solverFigures(
   };
 }
 
-/** No plan can be better than this. */
-function boundOf(result: SolveResult): number | null {
+/** No plan can be better than this. The bound of an optimal plan is the plan itself: the solver has proved it. */
+function boundOf(result: SolveResult, objective: number | null): number | null {
   switch (result.status) {
     case 'optimal':
-      return result.objective;
+      return objective;
     case 'stopped':
       return result.bound ?? null;
     case 'infeasible':

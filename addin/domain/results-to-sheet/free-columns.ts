@@ -21,8 +21,9 @@ export interface SearchRequest {
   /** The block's own cells. */
   readonly range: CellRange;
   readonly isLying: boolean;
-  /** First line of the block that holds results: the heading stands in the line before it. */
+  /** First line of the block that has results (the heading stands in the line before it), and how many follow. */
   readonly firstLine: number;
+  readonly lineCount: number;
   /** Cells where our own results stood and may stand again: what refers to them or names them is not in the way. */
   readonly ownRanges: readonly CellRange[];
   /** Whether what a cell within `ownRanges` holds is ours, and not the planner's. */
@@ -35,7 +36,7 @@ export interface FreeLanes {
   readonly isLying: boolean;
   /** First of the adjacent columns (rows where lying). */
   readonly firstLane: number;
-  /** Row (column where lying) of the headings, and of the block's first and last line. */
+  /** Row (column where lying) of the headings, and of the first and last line of results. */
   readonly headingAt: number;
   readonly from: number;
   readonly to: number;
@@ -60,18 +61,18 @@ export class LaneWindow {
   private readonly filled: Uint8Array;
 
   constructor(private readonly request: SearchRequest) {
-    const { range, isLying, firstLine } = request;
+    const { range, isLying, firstLine, lineCount } = request;
     this.sheet = range.sheet;
     this.isLying = isLying;
-    this.from = isLying ? range.left : range.top;
-    this.to = isLying ? range.right : range.bottom;
-    this.headingAt = this.from + firstLine - 1;
+    this.from = (isLying ? range.left : range.top) + firstLine;
+    this.to = this.from + lineCount - 1;
+    this.headingAt = this.from - 1;
     this.firstLane = (isLying ? range.bottom : range.right) + 1;
     const limit = isLying ? maximumRowCount : maximumColumnCount;
     this.laneCount = Math.max(0, Math.min(searchedLaneCount, limit - this.firstLane));
     this.blocked = new Uint8Array(this.laneCount);
     this.filled = new Uint8Array(this.laneCount);
-    const along = [Math.min(this.headingAt, this.from), this.to] as const;
+    const along = [this.headingAt, this.to] as const;
     const across = [this.firstLane, this.firstLane + this.laneCount - 1] as const;
     const [[top, bottom], [left, right]] = isLying ? [across, along] : [along, across];
     this.area = { sheet: this.sheet, top, left, bottom, right };

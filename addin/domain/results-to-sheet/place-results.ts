@@ -341,7 +341,8 @@ function searchRequest(
   return {
     range: block.range,
     isLying: block.orientation === 'lying',
-    firstLine: block.lines[0].line,
+    firstLine: block.firstLine,
+    lineCount: block.lineCount,
     ownRanges,
     isOurs: (cell) => ours.has(formatCellAddress(cell)),
   };

@@ -7,7 +7,6 @@
  */
 import { formatCellAddress, type CellAddress } from '../sheet/cell-address';
 import { absoluteRangeText, containsCell, formatCellRange, type CellRange } from '../sheet/cell-range';
-import type { CellValue } from '../sheet/cell-value';
 import type { DefinedName } from '../sheet/defined-name';
 import { findSheet, storedValue, type WorkbookSnapshot } from '../sheet/sheet-snapshot';
 import { recalculate } from '../calculation/recalculate';
@@ -126,7 +125,8 @@ export function planResultWrites(request: ResultWriteRequest): ResultWrites {
     ...storedValues,
     ...dropped,
     { kind: 'record', json: renewWorkbookRecord(record, model.planName, renewedRecord) },
-    ...(dropped.length > 0 ? [{ kind: 'recalculateOnOpening' } as const] : []),
+    // To some functions, such as COUNT, a cleared cell is not the 0 that it was recalculated with.
+    ...(dropped.length > 0 || clearings.writes.length > 0 ? [{ kind: 'recalculateOnOpening' } as const] : []),
   ];
   return {
     plan,
@@ -376,9 +376,18 @@ function withNames(workbook: WorkbookSnapshot, writes: readonly NameWrite[]): Wo
   return { sheets, names, tables, usesDates1904, record };
 }
 
-/** What the written cells will hold. */
-function changesOf(writes: readonly ValueWrite[]): Map<string, CellValue> {
-  return new Map(writes.map(({ cell, value }) => [formatCellAddress(cell), value]));
+/**
+ * What the written cells will hold, as a formula counts it: a cleared cell as 0. Headings are texts in cells that no
+ * formula refers to.
+ */
+function changesOf(writes: readonly ValueWrite[]): Map<string, number> {
+  const changes = new Map<string, number>();
+  for (const { cell, value } of writes) {
+    if (typeof value === 'number' || value === null) {
+      changes.set(formatCellAddress(cell), value ?? 0);
+    }
+  }
+  return changes;
 }
 
 function inOrderOfBlocks(placement: Placement): PlacedColumn[] {

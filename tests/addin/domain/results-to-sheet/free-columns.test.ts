@@ -2,7 +2,11 @@
  * Where result columns may stand (design: the first adjacent columns within 30, after one empty column). Expected
  * places are read off the little sheets by eye.
  */
-import { searchFreeLanes, takeLanes } from '../../../../addin/domain/results-to-sheet/free-columns';
+import {
+  searchFreeLanes,
+  takeLanes,
+  type SearchRequest,
+} from '../../../../addin/domain/results-to-sheet/free-columns';
 import { columnLetters } from '../../../../addin/domain/sheet/cell-address';
 import type { CellRange } from '../../../../addin/domain/sheet/cell-range';
 import { MemoryWorkbook, type WorkbookDescription } from '../../../../addin/adapters/memory/memory-workbook';
@@ -11,11 +15,14 @@ import { MemoryWorkbook, type WorkbookDescription } from '../../../../addin/adap
 const block: CellRange = { sheet: 'Plan', top: 4, left: 2, bottom: 7, right: 2 };
 const headings = { B4: 'Tile', C4: 'm² made', B5: 'Slate', B6: 'Sand', B7: 'Ochre', B8: 'Chalk' };
 
+function requestFor(range: CellRange, isLying: boolean): SearchRequest {
+  const lineCount = isLying ? range.right - range.left + 1 : range.bottom - range.top + 1;
+  return { range, isLying, firstLine: 0, lineCount, ownRanges: [], isOurs: () => false };
+}
+
 function search(description: WorkbookDescription, range = block, isLying = false, count = 3) {
   const workbook = MemoryWorkbook.of(description).snapshot();
-  const [window] = searchFreeLanes(workbook, [
-    { range, isLying, firstLine: 0, ownRanges: [], isOurs: () => false },
-  ]);
+  const [window] = searchFreeLanes(workbook, [requestFor(range, isLying)]);
   return window.find(count);
 }
 
@@ -122,13 +129,7 @@ describe('rows below a block that lies on its side', () => {
 it('Two blocks below each other do not get the same cells, and each takes the lanes nearest to it', () => {
   const workbook = MemoryWorkbook.of({ sheets: { Plan: headings } }).snapshot();
   const wide: CellRange = { ...block, right: 3 };
-  const requests = [block, wide].map((range) => ({
-    range,
-    isLying: false,
-    firstLine: 0,
-    ownRanges: [],
-    isOurs: () => false,
-  }));
+  const requests = [block, wide].map((range) => requestFor(range, false));
   const windows = searchFreeLanes(workbook, requests);
   const first = windows[0].find(2)!;
   expect(first.firstLane).toBe(5);
