@@ -4,18 +4,17 @@
 import type { FormulaModelIssue } from '../domain/model-from-sheet/model-issue';
 import type { Remedy } from '../domain/linearization/formula-issue';
 import { formatCellAddress } from '../domain/sheet/cell-address';
-import { listText } from './word-forms';
 
 export function formulaSentence(issue: FormulaModelIssue): string {
   const place = issue.cell === null ? 'A formula' : formatCellAddress(issue.cell);
   const text = (fact: string): string => factText(issue, fact);
   switch (issue.code) {
     case 'not-affine':
-      return `${place} ${whatIsDone(text('operation'), text('by'))}${chainText(issue)}. ${remedyText(text('remedy') as Remedy)}`;
+      return `${place} ${whatIsDone(text('operation'), text('by'), decisionText(issue))}. ${remedyText(text('remedy') as Remedy)}`;
     case 'circular-reference':
-      return `${place} depends on itself${aroundText(issue)}. Break the circle, so that every formula can be worked out.`;
+      return `${place} depends on itself${aroundText(issue, place)}. Break the circle, so that every formula can be worked out.`;
     case 'unknown-function':
-      return `${place} uses ${text('function')}, a function that is not known here${chainText(issue)}. Write the formula with other functions.`;
+      return `${place} uses ${text('function')}, a function that is not known here${onTheWay(issue)}. Write the formula with other functions.`;
     case 'formula-syntax':
       return `The formula in ${place} cannot be read. Type it again, or mend it in your spreadsheet program.`;
     case 'too-deep':
@@ -27,7 +26,7 @@ export function formulaSentence(issue: FormulaModelIssue): string {
     case 'several-sheets':
       return `${place} refers to several sheets at once (${text('reference')}), which is not read. Add the sheets up one by one.`;
     case 'error-value':
-      return `${place} gives the error ${text('error')}${chainText(issue)}. Mend the formula, or the cell the error comes from.`;
+      return `${place} gives the error ${text('error')}${onTheWay(issue)}. Mend the formula, or the cell the error comes from.`;
     case 'stored-value-differs':
       return `${place} shows ${text('stored')}, but its formula gives ${text('evaluated')}. Have the workbook calculated again and check the cell.`;
     case 'model-disagrees':
@@ -46,24 +45,24 @@ function factList(issue: FormulaModelIssue, fact: string): readonly string[] {
 }
 
 /** What a formula does to a decision that no linear plan can follow. */
-function whatIsDone(operation: string, by: string): string {
+function whatIsDone(operation: string, by: string, decision: string): string {
   switch (operation) {
     case 'product':
-      return `multiplies decisions with each other (${by})`;
+      return `multiplies amounts that both depend on decisions (${by}), among them ${decision}`;
     case 'division':
-      return 'divides by an amount that depends on a decision';
+      return `divides by an amount that depends on ${decision}`;
     case 'power':
-      return `takes a power of a decision (${by})`;
+      return `takes a power (${by}) of ${decision}`;
     case 'comparison':
-      return `compares a decision (${by})`;
+      return `compares (${by}) ${decision}`;
     case 'concatenation':
-      return 'joins a decision into a text (&)';
+      return `joins ${decision} into a text (${by})`;
     case 'condition':
-      return `makes a condition depend on a decision (${by})`;
+      return `makes a condition (${by}) depend on ${decision}`;
     case 'reference':
-      return `lets a decision choose which cell is looked at (${by})`;
+      return `lets ${decision} choose which cell is looked at (${by})`;
     default:
-      return `applies ${by} to a decision, which keeps no fixed rate`;
+      return `applies ${by} to ${decision}, which keeps no fixed rate`;
   }
 }
 
@@ -82,22 +81,31 @@ function remedyText(remedy: Remedy): string {
   }
 }
 
-/** How many cells of a chain a sentence names: the decision, the cells next to it, and the end. */
-const namedCells = 4;
+/** How many cells between a decision and a formula a sentence names. */
+const namedBetween = 2;
 
-/** Where the decision comes in, when it is not the formula's own reference. */
-function chainText(issue: FormulaModelIssue): string {
-  const chain = factList(issue, 'chain');
-  if (chain.length < 2) {
-    return '';
+/** `Floor matt (Plan!B2)`, `Floor matt (Plan!B2) by way of Plan!F2`: the decision, and the cells it comes through. */
+function decisionText(issue: FormulaModelIssue): string {
+  const [decision, ...rest] = factList(issue, 'chain');
+  if (decision === undefined || rest.length === 0) {
+    return 'a decision';
   }
-  const shown = chain.length <= namedCells ? chain : [...chain.slice(0, 2), '…', ...chain.slice(-1)];
-  return ` (${shown.join(' → ')})`;
+  const between = rest.slice(0, -1);
+  const shown = between.length <= namedBetween ? between : [between[0], '…', between[between.length - 1]];
+  return shown.length === 0 ? decision : `${decision} by way of ${shown.join(', ')}`;
 }
 
-function aroundText(issue: FormulaModelIssue): string {
-  const cells = factList(issue, 'cells');
-  return cells.length < 2
-    ? ''
-    : ` by way of ${listText(cells.slice(0, namedCells))}${cells.length > namedCells ? ' …' : ''}`;
+/** Names the decision where the fault lies on the way from one. */
+function onTheWay(issue: FormulaModelIssue): string {
+  return factList(issue, 'chain').length < 2 ? '' : ` on the way from ${decisionText(issue)}`;
+}
+
+/** How many cells of a circle a sentence names. */
+const namedAround = 4;
+
+/** The cells of a circle but the one the sentence begins with. */
+function aroundText(issue: FormulaModelIssue, place: string): string {
+  const others = factList(issue, 'cells').filter((cell) => cell !== place);
+  const shown = others.length <= namedAround ? others : [...others.slice(0, namedAround), '…'];
+  return shown.length === 0 ? '' : ` by way of ${shown.join(', ')}`;
 }

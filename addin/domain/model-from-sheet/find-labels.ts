@@ -49,6 +49,12 @@ export class LabelFinder {
     return appendCells(groups, labels);
   }
 
+  /** What a single cell would be called: the text beside it, otherwise the one above. */
+  textBeside(cell: CellAddress): string | undefined {
+    const texts = this.textsOf(cell.sheet);
+    return texts.leftOf(cell) ?? texts.above(cell);
+  }
+
   private candidatesOf(group: LabelGroup): Candidate[] {
     return group.subjects.map(({ cell, labelCell }) => ({
       named: labelCell === undefined ? undefined : this.textsOf(labelCell.sheet).labelIn(labelCell),

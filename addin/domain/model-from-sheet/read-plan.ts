@@ -8,6 +8,7 @@ import { CellReader } from './cell-reader';
 import { LabelFinder } from './find-labels';
 import { findSharedDecisions } from './find-shared-decisions';
 import { inspectBlocks } from './inspect-blocks';
+import { labelChains } from './label-chains';
 import { labelConstraints, labelDecisions } from './label-model';
 import {
   cellCountOfArea,
@@ -74,8 +75,11 @@ export function readPlan(workbook: WorkbookSnapshot, planName: string, options: 
     options.now,
   );
   const sense = declaration.sense === null ? null : readSenseOf(declaration.sense, reader);
-  const rest = knowsDecisions ? readAmounts(workbook, declaration, decisions, variables, reader) : null;
-  issues.push(...reader.issues);
+  const finder = new LabelFinder(workbook, senseCells(declaration.sense));
+  const labels = knowsDecisions ? labelDecisions(declaration, decisions, finder, reader) : [];
+  const rest = knowsDecisions ? readAmounts(declaration, decisions, labels, variables, finder, reader) : null;
+  const labelled = labels.map((label, k) => ({ cell: decisions.cells[k], label }));
+  issues.push(...labelChains(reader.issues, labelled, workbook, finder));
 
   const sorted = sortIssues(workbook, issues);
   if (sense === null || rest === null || sorted.some((issue) => issue.severity === 'error')) {
@@ -95,14 +99,13 @@ export function readPlan(workbook: WorkbookSnapshot, planName: string, options: 
 type ModelAmounts = Omit<SheetModel, 'planName' | 'prefix' | 'separator' | 'scope' | 'sense'>;
 
 function readAmounts(
-  workbook: WorkbookSnapshot,
   declaration: ModelDeclaration,
   decisions: DecisionReading,
+  labels: readonly string[],
   variables: readonly number[],
+  finder: LabelFinder,
   reader: CellReader,
 ): ModelAmounts | null {
-  const finder = new LabelFinder(workbook, senseCells(declaration.sense));
-  const labels = labelDecisions(declaration, decisions, finder, reader);
   const objective = readObjective(declaration, variables, reader);
   const sets = declaration.constraints
     .map((set) => readConstraintSet(set, variables, reader))

@@ -4,39 +4,40 @@ import { sentenceOfIssue } from '../../../addin/wording/issue-sentences';
 
 type Case = readonly [code: FormulaModelIssue['code'], facts: FormulaModelIssue['facts'], sentence: string];
 
-const chain = ['Floor matt', 'Plan!F2', 'Plan!B7'];
+const direct = ['Floor matt (Plan!B2)', 'Press hours (Plan!B7)'];
+const chain = ['Floor matt (Plan!B2)', 'Plan!F2', 'Press hours (Plan!B7)'];
 
 // The facts are those that linearization/formula-issue.ts promises for each code.
 const cases: readonly Case[] = [
   [
     'not-affine',
     { operation: 'product', by: '*', remedy: 'none', chain, formula: 'F2*B3' },
-    'Plan!B7 multiplies decisions with each other (*) (Floor matt → Plan!F2 → Plan!B7). Use only sums of decisions times fixed numbers.',
+    'Plan!B7 multiplies amounts that both depend on decisions (*), among them Floor matt (Plan!B2) by way of Plan!F2. Use only sums of decisions times fixed numbers.',
   ],
   [
     'not-affine',
-    { operation: 'division', by: '/', remedy: 'ratio', chain: ['Floor matt'], formula: '5/B2' },
-    'Plan!B7 divides by an amount that depends on a decision. Multiply the ratio out: instead of A/B <= k write A <= k*B.',
+    { operation: 'division', by: '/', remedy: 'ratio', chain: direct, formula: '5/B2' },
+    'Plan!B7 divides by an amount that depends on Floor matt (Plan!B2). Multiply the ratio out: instead of A/B <= k write A <= k*B.',
   ],
   [
     'not-affine',
     { operation: 'power', by: '^', remedy: 'none', chain: [], formula: 'B2^2' },
-    'Plan!B7 takes a power of a decision (^). Use only sums of decisions times fixed numbers.',
+    'Plan!B7 takes a power (^) of a decision. Use only sums of decisions times fixed numbers.',
   ],
   [
     'not-affine',
     { operation: 'condition', by: 'IF', remedy: 'yes-no', chain: [], formula: 'IF(B2>0,5,0)' },
-    'Plan!B7 makes a condition depend on a decision (IF). Replace the condition by a yes/no decision cell, or write the cases as constraint rows.',
+    'Plan!B7 makes a condition (IF) depend on a decision. Replace the condition by a yes/no decision cell, or write the cases as constraint rows.',
   ],
   [
     'not-affine',
     { operation: 'comparison', by: '>', remedy: 'yes-no', chain: [], formula: 'B2>0' },
-    'Plan!B7 compares a decision (>). Replace the condition by a yes/no decision cell, or write the cases as constraint rows.',
+    'Plan!B7 compares (>) a decision. Replace the condition by a yes/no decision cell, or write the cases as constraint rows.',
   ],
   [
     'not-affine',
-    { operation: 'concatenation', by: '&', remedy: 'none', chain: [], formula: 'B2&"h"' },
-    'Plan!B7 joins a decision into a text (&). Use only sums of decisions times fixed numbers.',
+    { operation: 'concatenation', by: '&', remedy: 'none', chain: direct, formula: 'B2&"h"' },
+    'Plan!B7 joins Floor matt (Plan!B2) into a text (&). Use only sums of decisions times fixed numbers.',
   ],
   [
     'not-affine',
@@ -51,12 +52,12 @@ const cases: readonly Case[] = [
   [
     'not-affine',
     { operation: 'function', by: 'ROUND', remedy: 'lot', chain: ['a', 'b', 'c', 'd', 'e'], formula: '' },
-    'Plan!B7 applies ROUND to a decision, which keeps no fixed rate (a → b → … → e). Leave the rounding out; whole amounts are asked for with a lot.',
+    'Plan!B7 applies ROUND to a by way of b, …, d, which keeps no fixed rate. Leave the rounding out; whole amounts are asked for with a lot.',
   ],
   [
     'circular-reference',
     { cells: ['Plan!B7', 'Plan!C7', 'Plan!D7'], formula: 'C7' },
-    'Plan!B7 depends on itself by way of Plan!B7, Plan!C7 and Plan!D7. Break the circle, so that every formula can be worked out.',
+    'Plan!B7 depends on itself by way of Plan!C7, Plan!D7. Break the circle, so that every formula can be worked out.',
   ],
   [
     'circular-reference',
@@ -66,7 +67,7 @@ const cases: readonly Case[] = [
   [
     'unknown-function',
     { function: 'KILNTIME', chain, formula: 'KILNTIME(F2)' },
-    'Plan!B7 uses KILNTIME, a function that is not known here (Floor matt → Plan!F2 → Plan!B7). Write the formula with other functions.',
+    'Plan!B7 uses KILNTIME, a function that is not known here on the way from Floor matt (Plan!B2) by way of Plan!F2. Write the formula with other functions.',
   ],
   [
     'formula-syntax',

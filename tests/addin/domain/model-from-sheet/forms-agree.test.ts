@@ -3,7 +3,7 @@
  * and as parts apart, upright and lying, must all give the rows they were written from.
  */
 import fc from 'fast-check';
-import { MemoryWorkbook, type CellContent } from '../../../../addin/adapters/memory/memory-workbook';
+import { MemoryWorkbook } from '../../../../addin/adapters/memory/memory-workbook';
 import { readPlan } from '../../../../addin/domain/model-from-sheet/read-plan';
 import { columnLetters } from '../../../../addin/domain/sheet/cell-address';
 
@@ -56,7 +56,7 @@ function readRows(
 ): StatedRow[] {
   const decisionCount = rows[0].coefficients.length;
   const workbook = MemoryWorkbook.of({
-    sheets: { Decisions: { B1: 1 }, Rows: { A1: grid as CellContent } },
+    sheets: { Decisions: { B1: 1 }, Rows: { A1: grid } },
     names: {
       'Week.Decision': `Decisions!$A$1:$A$${decisionCount}`,
       'Week.Objective': `Decisions!$B$1:$B$${decisionCount}`,
