@@ -113,8 +113,9 @@ export function planSheet(): SampleSheet {
   return {
     name: planSheetName,
     cells,
-    columnWidths: { A: 33, B: 13, C: 11, D: 13, E: 12, F: 12, G: 12, H: 12, I: 3 },
-    rowHeights: { 1: 24, 6: 28 },
+    columnWidths: { A: 33, B: 14, C: 11, D: 13, E: 12, F: 12, G: 12, H: 12, I: 3 },
+    // Room for a heading of three lines beside both blocks.
+    rowHeights: { 1: 24, 6: 42, [headingRow]: 42 },
     frozenAt: `B${firstProductRow}`,
     pickList: {
       range: `G${firstLimitRow}:G${lastLimitRow}`,

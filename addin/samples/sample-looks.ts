@@ -24,7 +24,7 @@ export const looks = {
   rate: { numberFormat: '0.00' },
   price: { numberFormat: '#,##0.00 "€"' },
   money: { numberFormat: '#,##0 "€"' },
-  result: { numberFormat: '#,##0 "€"', isBold: true, fontSize: 12 },
+  result: { numberFormat: '#,##0.00 "€"', isBold: true, fontSize: 12 },
   share: { numberFormat: '0%' },
   date: { numberFormat: 'd mmm yyyy', isRightAligned: true },
   // What the planner types in: the amounts to make.
