@@ -86,7 +86,7 @@ export function readArguments(words: readonly string[], version: string): Comman
       throw new UsageError('usage', `${sentence(error.message)} See planrow --help.`);
     }
   }
-  return read ?? { command: 'show', text: shown };
+  return read ?? { command: 'show', text: `${shown.trimEnd()}\n` };
 }
 
 function describeCommands(version: string, give: (result: CommandLineArguments) => void): Command {

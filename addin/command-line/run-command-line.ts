@@ -8,7 +8,7 @@ import { readArguments, type CommandLineArguments } from './arguments';
 import { checkCommand } from './check-command';
 import type { CommandLineHost } from './command-line-host';
 import { exitCodes, type ExitCode } from './exit-codes';
-import { jsonText } from './json-output';
+import { checkReportJson, solveReportJson } from './json-output';
 import { checkReportText, solveReportText } from './report';
 import { solveCommand } from './solve-command';
 import { errorEntry, reportOfIssues, type CheckReport, type ReportStatus } from './solve-report';
@@ -30,12 +30,12 @@ async function carryOut(command: CommandLineArguments, host: CommandLineHost): P
       return exitCodes.optimal;
     case 'solve': {
       const { exitCode, report, context } = await solveCommand(command, host);
-      host.print(command.json ? jsonText(report) : solveReportText(report, context));
+      host.print(command.json ? solveReportJson(report) : solveReportText(report, context));
       return exitCode;
     }
     case 'check': {
       const { exitCode, report } = await checkCommand(command, host);
-      host.print(command.json ? jsonText(report) : checkReportText(report, command.file));
+      host.print(command.json ? checkReportJson(report) : checkReportText(report, command.file));
       return exitCode;
     }
   }
@@ -52,7 +52,11 @@ function reportFailure(words: readonly string[], error: unknown, host: CommandLi
       size: null,
       issues: [entry],
     };
-    host.print(jsonText(words[0] === 'check' ? checkReport : reportOfIssues(failure.status, [entry])));
+    host.print(
+      words[0] === 'check'
+        ? checkReportJson(checkReport)
+        : solveReportJson(reportOfIssues(failure.status, [entry])),
+    );
   }
   if (!words.includes('--json') || failure.exitCode === exitCodes.bug) {
     host.printError(`planrow: ${failure.text}\n`);

@@ -21,9 +21,6 @@ export interface SearchRequest {
   /** The block's own cells. */
   readonly range: CellRange;
   readonly isLying: boolean;
-  /** First line of the block that has results (the heading stands in the line before it), and how many follow. */
-  readonly firstLine: number;
-  readonly lineCount: number;
   /** Cells where our own results stood and may stand again: what refers to them or names them is not in the way. */
   readonly ownRanges: readonly CellRange[];
   /** Whether what a cell within `ownRanges` holds is ours, and not the planner's. */
@@ -36,7 +33,7 @@ export interface FreeLanes {
   readonly isLying: boolean;
   /** First of the adjacent columns (rows where lying). */
   readonly firstLane: number;
-  /** Row (column where lying) of the headings, and of the first and last line of results. */
+  /** Row (column where lying) of the headings, before the block, and of the block's first and last line. */
   readonly headingAt: number;
   readonly from: number;
   readonly to: number;
@@ -61,11 +58,11 @@ export class LaneWindow {
   private readonly filled: Uint8Array;
 
   constructor(private readonly request: SearchRequest) {
-    const { range, isLying, firstLine, lineCount } = request;
+    const { range, isLying } = request;
     this.sheet = range.sheet;
     this.isLying = isLying;
-    this.from = (isLying ? range.left : range.top) + firstLine;
-    this.to = this.from + lineCount - 1;
+    this.from = isLying ? range.left : range.top;
+    this.to = isLying ? range.right : range.bottom;
     this.headingAt = this.from - 1;
     this.firstLane = (isLying ? range.bottom : range.right) + 1;
     const limit = isLying ? maximumRowCount : maximumColumnCount;

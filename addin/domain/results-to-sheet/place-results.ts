@@ -341,8 +341,6 @@ function searchRequest(
   return {
     range: block.range,
     isLying: block.orientation === 'lying',
-    firstLine: block.firstLine,
-    lineCount: block.lineCount,
     ownRanges,
     isOurs: (cell) => ours.has(formatCellAddress(cell)),
   };

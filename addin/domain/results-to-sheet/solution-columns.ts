@@ -16,7 +16,7 @@ export type BlockOrientation = 'upright' | 'lying' | 'grid';
 
 /** One line of results. */
 export interface ResultLine {
-  /** Position along the results from 0: row by row beside an upright block, column by column below a lying one. */
+  /** Position along the block from 0: its row within an upright block, its column within a lying one. */
   readonly line: number;
   readonly label: string;
   /** The cell that these results are about, referred to where results stand on a sheet of their own. */
@@ -42,9 +42,7 @@ export interface ResultBlock {
   readonly orientation: BlockOrientation;
   /** The planner's block: results stand beside it and never in it. */
   readonly range: CellRange;
-  /** First line of the block that has results; blanks and headings before it have none. The first is 0. */
-  readonly firstLine: number;
-  /** From there to the last line that has results, blank ones between included; in a grid one a decision. */
+  /** Lines of the block, blank ones and headings included; in a grid one a decision. */
   readonly lineCount: number;
   readonly lines: readonly ResultLine[];
   readonly columns: readonly ResultColumn[];
@@ -76,7 +74,6 @@ function decisionResults(model: SheetModel, solution: PlanSolution): ResultBlock
       number: block.number,
       orientation,
       range,
-      firstLine: 0,
       lineCount: orientation === 'grid' ? decisions.length : lineCountOf(range, orientation),
       lines: decisions.map((decision, position) => ({
         line: orientation === 'grid' ? position : lineOf(decision.cell, range, orientation),
@@ -100,9 +97,6 @@ function constraintResults(model: SheetModel, solution: PlanSolution): ResultBlo
     const solved = solution.constraints.slice(first, first + set.rows.length);
     first += set.rows.length;
     const orientation = set.isLying ? 'lying' : 'upright';
-    const places = set.rows.map((row) => lineOf(placeOfRow(row), set.range, orientation));
-    const firstLine = places.reduce((least, place) => Math.min(least, place), Infinity);
-    const lastLine = places.reduce((most, place) => Math.max(most, place), -1);
     const right = set.rows.map((row) => row.rightCell);
     const objective = set.rows.map(() => model.objectiveCell ?? undefined);
     const contents: Record<
@@ -118,10 +112,9 @@ function constraintResults(model: SheetModel, solution: PlanSolution): ResultBlo
       number: set.number,
       orientation,
       range: set.range,
-      firstLine,
-      lineCount: lastLine - firstLine + 1,
+      lineCount: lineCountOf(set.range, orientation),
       lines: set.rows.map((row, position) => ({
-        line: places[position] - firstLine,
+        line: lineOf(placeOfRow(row), set.range, orientation),
         label: row.label,
         about: row.rightCell,
         aboutValue: solved[position].rightSide,

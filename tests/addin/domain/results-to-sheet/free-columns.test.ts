@@ -16,8 +16,7 @@ const block: CellRange = { sheet: 'Plan', top: 4, left: 2, bottom: 7, right: 2 }
 const headings = { B4: 'Tile', C4: 'm² made', B5: 'Slate', B6: 'Sand', B7: 'Ochre', B8: 'Chalk' };
 
 function requestFor(range: CellRange, isLying: boolean): SearchRequest {
-  const lineCount = isLying ? range.right - range.left + 1 : range.bottom - range.top + 1;
-  return { range, isLying, firstLine: 0, lineCount, ownRanges: [], isOurs: () => false };
+  return { range, isLying, ownRanges: [], isOurs: () => false };
 }
 
 function search(description: WorkbookDescription, range = block, isLying = false, count = 3) {

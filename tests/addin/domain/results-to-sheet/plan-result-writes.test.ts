@@ -500,20 +500,21 @@ describe('a block lying on its side', () => {
 });
 
 describe('headings and blank rows within a block of constraint rows', () => {
-  it('keep their lines empty in the results, and the heading stands above the first row that counts', async () => {
+  it('keep their lines empty in the results, and the result’s heading stands above the block', async () => {
     const workbook = tileWorks(
       { names: { 'Week.Constraint': 'Plan!$B$10:$D$14' } },
       { A10: null, B10: 'Hours', B13: 'Further', B14: '=C5', C14: '<=', D14: 6 },
     );
     const writes = await write(workbook, { ...optimum, dualValues: [1, 2, 0] });
-    expect(rowOf(workbook, 'F10', 3)).toEqual([
+    expect(rowOf(workbook, 'F9', 3)).toEqual([
       'Left side\nwhat it is',
       'Slack\nwhat it is',
       'Dual value\nwhat it is',
     ]);
+    expect(rowOf(workbook, 'F10', 3)).toEqual([null, null, null]);
     expect(rowOf(workbook, 'F13', 3)).toEqual([null, null, null]);
     expect(rowOf(workbook, 'F14', 3)).toEqual([2, 4, 0]);
-    expect(nameOf(workbook, 'Week.Slack')).toBe('Plan!$G$11:$G$14');
+    expect(nameOf(workbook, 'Week.Slack')).toBe('Plan!$G$10:$G$14');
     expect(writes.notices).toEqual([]);
   });
 });
