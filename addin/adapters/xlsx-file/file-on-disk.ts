@@ -3,7 +3,7 @@
  */
 import { randomBytes } from 'node:crypto';
 import { constants } from 'node:fs';
-import { access, chmod, copyFile, link, open, readFile, rename, rm, stat } from 'node:fs/promises';
+import { access, chmod, copyFile, link, open, readFile, realpath, rename, rm, stat } from 'node:fs/promises';
 import path from 'node:path';
 import { WorkbookError } from '../../ports/workbook';
 import { unreadableKind } from './file-faults';
@@ -61,8 +61,8 @@ export async function saveNewFile(filePath: string, bytes: Uint8Array): Promise<
     // A link, unlike a rename, never takes the place of a file that has come up meanwhile.
     await link(temporary, filePath).catch(async (error: unknown) => {
       if (codeOf(error) === 'EEXIST') throw error;
-      // Some file systems know no links: a copy that must not overwrite does the same.
-      await copyFile(temporary, filePath, constants.COPYFILE_EXCL);
+      // Some file systems know no links: the file is then written under its own name, still never over another.
+      await writeWhole(filePath, bytes);
     });
   } catch (error) {
     if (codeOf(error) === 'EEXIST') {
@@ -89,32 +89,51 @@ export async function replaceFile(
   bytes: Uint8Array,
   verify: (written: Uint8Array) => Promise<void>,
 ): Promise<void> {
-  const temporary = temporaryName(filePath);
+  // Where the name is a link to the workbook, the workbook itself is replaced and the link stays.
+  const target = await realpath(filePath).catch((error: unknown) => {
+    throw writeFailed(filePath, error);
+  });
+  const temporary = temporaryName(target);
   const backup = `${temporary}.backup`;
   let isReplaced = false;
   try {
-    const { mode } = await stat(filePath);
+    const { mode } = await stat(target);
     await writeWhole(temporary, bytes);
     await chmod(temporary, mode);
-    await copyFile(filePath, backup, constants.COPYFILE_EXCL);
-    await rename(temporary, filePath);
+    await copyFile(target, backup, constants.COPYFILE_EXCL);
+    await rename(temporary, target);
     isReplaced = true;
-    await verify(new Uint8Array(await readFile(filePath)));
+    await verify(new Uint8Array(await readFile(target)));
   } catch (error) {
-    if (isReplaced) await rename(backup, filePath);
+    if (isReplaced) await putBack(backup, target, filePath);
+    else await rm(backup, { force: true });
     throw error instanceof WorkbookError ? error : writeFailed(filePath, error);
   } finally {
     await rm(temporary, { force: true });
-    await rm(backup, { force: true });
   }
+  await rm(backup, { force: true });
 }
 
-/** Written and handed to the disk, so that a name never stands for half a file. */
+/** Where even this fails, the backup stays, and the planner is told where it is. */
+async function putBack(backup: string, target: string, filePath: string): Promise<void> {
+  await rename(backup, target).catch((cause: unknown) => {
+    throw new WorkbookError(
+      'write-failed',
+      `${filePath} could not be put back as it was (${codeOf(cause)}); your original stands beside it as ${path.basename(backup)}.`,
+      { cause },
+    );
+  });
+}
+
+/** A new file, written and handed to the disk. What breaks off half-way is removed; a file of others never is. */
 async function writeWhole(filePath: string, bytes: Uint8Array): Promise<void> {
   const file = await open(filePath, 'wx');
   try {
     await file.writeFile(bytes);
     await file.sync();
+  } catch (error) {
+    await rm(filePath, { force: true });
+    throw error;
   } finally {
     await file.close();
   }
@@ -133,8 +152,9 @@ async function exists(filePath: string): Promise<boolean> {
   );
 }
 
+/** The system's code for what went wrong, such as ENOSPC. */
 function codeOf(error: unknown): string {
-  return error instanceof Error && 'code' in error ? String(error.code) : 'unknown';
+  return typeof error === 'object' && error !== null && 'code' in error ? String(error.code) : 'unknown';
 }
 
 function writeFailed(filePath: string, cause: unknown): WorkbookError {
