@@ -13,6 +13,8 @@ import { workbookIndexOf, type WorkbookIndex } from '../formula/workbook-index';
 
 /** A cell that holds a formula; for an array formula its first cell, which stands for all that it fills. */
 export class FormulaCell {
+  /** Evaluated over arrays, and more than one cell takes its values. */
+  readonly isArrayFormula: boolean;
   private parsed: ParsedFormula | FormulaSyntaxIssue | undefined;
 
   constructor(
@@ -22,7 +24,9 @@ export class FormulaCell {
     readonly row: number,
     readonly column: number,
     readonly cell: SheetCell,
-  ) {}
+  ) {
+    this.isArrayFormula = cell.arrayRange !== undefined;
+  }
 
   get formula(): ParsedFormula | FormulaSyntaxIssue {
     return (this.parsed ??= this.grid.owner.formulas.parse(this.cell.formula ?? '', this));
@@ -30,11 +34,6 @@ export class FormulaCell {
 
   get address(): CellAddress {
     return { sheet: this.grid.name, row: this.row, column: this.column };
-  }
-
-  /** Evaluated over arrays, and more than one cell takes its values. */
-  get isArrayFormula(): boolean {
-    return this.cell.arrayRange !== undefined;
   }
 }
 

@@ -2,7 +2,6 @@
  * How a worksheet turns one kind of value into another, and compares values. A number that depends on decisions is
  * never turned into anything here: whoever asks for a plain value of it is refused.
  */
-import { parseValue } from 'numfmt';
 import { CellError } from '../sheet/cell-value';
 import { isDependent, errorValue, type Scalar } from './evaluated-value';
 import { dependentValueRefusal, errorSignal } from './evaluation-refusal';
@@ -45,17 +44,35 @@ export function toInteger(value: Scalar): number {
   return Math.trunc(toNumber(value));
 }
 
-/** @throws ErrorValueSignal #VALUE! where the text reads as no number, date, time or percentage */
+/**
+ * A text that reads as a number: digits with a sign, a point, thousands by commas, an exponent, a percent sign, a
+ * dollar sign, or in brackets for a negative one. Texts that read as dates are left to DATEVALUE, which knows the
+ * workbook's calendar.
+ * @throws ErrorValueSignal #VALUE!
+ */
 export function numberOfText(text: string): number {
-  const trimmed = text.trim();
-  if (/^[+-]?(\d+\.?\d*|\.\d+)(e[+-]?\d+)?$/i.test(trimmed)) {
-    return Number(trimmed);
-  }
-  const parsed = trimmed === '' ? null : parseValue(trimmed);
-  if (parsed === null || parsed === undefined || typeof parsed.value !== 'number') {
+  const number = readNumber(text);
+  if (number === undefined) {
     throw errorSignal(errorValue.value);
   }
-  return parsed.value;
+  return number;
+}
+
+/** @returns undefined where the text reads as no number */
+export function readNumber(text: string): number | undefined {
+  const bracketed = /^\((.*)\)$/.exec(text.trim());
+  const match = /^([+-]?)\s*\$?\s*(\d{1,3}(?:,\d{3})+(?:\.\d*)?|\d+\.?\d*|\.\d+)(e[+-]?\d+)?\s*(%?)$/i.exec(
+    bracketed === null ? text.trim() : bracketed[1],
+  );
+  if (match === null) {
+    return undefined;
+  }
+  const [, sign, digits, exponent = '', percent] = match;
+  const size = Number(digits.replaceAll(',', '') + exponent) / (percent === '%' ? 100 : 1);
+  if (!Number.isFinite(size) || (bracketed !== null && sign !== '')) {
+    return undefined;
+  }
+  return sign === '-' || bracketed !== null ? -size : size;
 }
 
 /** A truth value. Numbers are true unless 0; a text is one only if it says so. */

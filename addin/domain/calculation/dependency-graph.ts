@@ -34,19 +34,23 @@ const volatileFunctions = new Set(['TODAY', 'NOW']);
 /** Works out a reference that calculation alone can tell; undefined where even that fails. */
 export type ComputedReferenceResolver = (cell: FormulaCell, node: FormulaNode) => readonly Area[] | undefined;
 
+const none: readonly never[] = [];
+
 /** A formula cell, or a range that formulas refer to. */
 export class GraphNode {
   /** Order of discovery; −1: not yet visited. */
   discovery = -1;
   lowest = -1;
   isOnStack = false;
+  /** Position of the precedent to be searched next. */
+  next = 0;
   /** Valid once visited. */
   dependsOnInputs = false;
   /** TODAY, NOW or an uncertain reference is among what it builds on. */
   isVolatile = false;
-  precedents: readonly GraphNode[] = [];
+  precedents: readonly GraphNode[] = none;
   /** Inputs it refers to itself. */
-  inputs: readonly InputCell[] = [];
+  inputs: readonly InputCell[] = none;
 
   constructor(
     /** undefined: a range. */
@@ -56,11 +60,6 @@ export class GraphNode {
     /** For a range: a shorter one with the same first row, which this one lengthens. */
     readonly before: GraphNode | undefined,
   ) {}
-}
-
-interface Frame {
-  readonly node: GraphNode;
-  next: number;
 }
 
 export class DependencyGraph {
@@ -97,56 +96,68 @@ export class DependencyGraph {
     return (this.nodes[cell.id] ??= new GraphNode(cell, undefined, undefined));
   }
 
+  // hot: once a search, a step a reference.
   private search(root: GraphNode): void {
-    const frames: Frame[] = [];
+    const path: GraphNode[] = [];
     const stack: GraphNode[] = [];
-    const enter = (node: GraphNode): void => {
-      node.discovery = node.lowest = this.discovered++;
-      node.isOnStack = true;
-      stack.push(node);
-      this.findPrecedents(node);
-      frames.push({ node, next: 0 });
-    };
-    enter(root);
-    while (frames.length > 0) {
-      const frame = frames[frames.length - 1];
-      const { node } = frame;
-      if (frame.next < node.precedents.length) {
-        const precedent = node.precedents[frame.next++];
+    let entered: GraphNode | undefined = root;
+    for (;;) {
+      if (entered !== undefined) {
+        entered.discovery = entered.lowest = this.discovered++;
+        entered.isOnStack = true;
+        stack.push(entered);
+        this.findPrecedents(entered);
+        path.push(entered);
+      }
+      const node = path[path.length - 1];
+      entered = undefined;
+      const { precedents } = node;
+      while (node.next < precedents.length) {
+        const precedent = precedents[node.next++];
         if (precedent.discovery < 0) {
-          enter(precedent);
-        } else if (precedent.isOnStack) {
-          node.lowest = Math.min(node.lowest, precedent.discovery);
+          entered = precedent;
+          break;
         }
+      }
+      if (entered !== undefined) {
         continue;
       }
-      frames.pop();
-      for (const precedent of node.precedents) {
+      path.pop();
+      for (const precedent of precedents) {
         node.dependsOnInputs ||= precedent.dependsOnInputs;
         node.isVolatile ||= precedent.isVolatile;
-        if (precedent.isOnStack) {
-          node.lowest = Math.min(node.lowest, precedent.lowest);
+        if (precedent.isOnStack && precedent.lowest < node.lowest) {
+          node.lowest = precedent.lowest;
         }
       }
       if (node.lowest === node.discovery) {
         this.closeComponent(node, stack);
+      }
+      if (path.length === 0) {
+        return;
       }
     }
   }
 
   /** Everything on the stack down to the root is one component. */
   private closeComponent(root: GraphNode, stack: GraphNode[]): void {
-    const from = stack.lastIndexOf(root);
-    const members = stack.splice(from);
+    if (stack[stack.length - 1] === root) {
+      stack.pop();
+      this.close(root, root.dependsOnInputs, root.isVolatile);
+      return;
+    }
+    const members = stack.splice(stack.lastIndexOf(root));
     const dependsOnInputs = members.some((member) => member.dependsOnInputs);
     const isVolatile = members.some((member) => member.isVolatile);
-    for (const member of members.reverse()) {
-      member.isOnStack = false;
-      member.dependsOnInputs = dependsOnInputs;
-      member.isVolatile = isVolatile;
-      if (member.cell !== undefined) {
-        this.order.push(member.cell);
-      }
+    members.reverse().forEach((member) => this.close(member, dependsOnInputs, isVolatile));
+  }
+
+  private close(member: GraphNode, dependsOnInputs: boolean, isVolatile: boolean): void {
+    member.isOnStack = false;
+    member.dependsOnInputs = dependsOnInputs;
+    member.isVolatile = isVolatile;
+    if (member.cell !== undefined) {
+      this.order.push(member.cell);
     }
   }
 
@@ -166,9 +177,11 @@ export class DependencyGraph {
         this.visitNodesOf(node.area, node.area.top, precedents, inputs);
       }
     }
-    node.precedents = precedents;
-    node.inputs = inputs;
+    if (precedents.length > 0) {
+      node.precedents = precedents;
+    }
     if (inputs.length > 0) {
+      node.inputs = inputs;
       node.dependsOnInputs = true;
     }
   }
@@ -181,15 +194,12 @@ export class DependencyGraph {
     precedents: GraphNode[],
     inputs: InputCell[],
   ): void {
-    if (formula.functionNames.some((name) => volatileFunctions.has(name))) {
+    if (
+      formula.functionNames.length > 0 &&
+      formula.functionNames.some((name) => volatileFunctions.has(name))
+    ) {
       node.isVolatile = true;
     }
-    const home = { sheet: cell.grid.name, row: cell.row, column: cell.column };
-    const addRange = (range: CellRange | ReferenceFault): void => {
-      if (!isReferenceFault(range)) {
-        this.addArea(this.areaOf(range), precedents, inputs);
-      }
-    };
     for (const reference of formula.references) {
       switch (reference.kind) {
         case 'cell':
@@ -202,31 +212,27 @@ export class DependencyGraph {
               break;
             }
           }
-          addRange(rangeOfNode(reference, this.grid.index, home));
+          this.addRange(rangeOfNode(reference, this.grid.index, cell.address), precedents, inputs);
           break;
         case 'range':
-          addRange(rangeOfNode(reference, this.grid.index, home));
+          this.addRange(rangeOfNode(reference, this.grid.index, cell.address), precedents, inputs);
           break;
         case 'table':
-          addRange(rangeOfTable(reference, this.grid.index, home));
+          this.addRange(rangeOfTable(reference, this.grid.index, cell.address), precedents, inputs);
           break;
         case 'sheets':
           for (const sheet of this.sheetsBetween(reference.firstSheet, reference.lastSheet)) {
-            addRange(rangeOfNode({ ...reference.reference, sheet }, this.grid.index, home));
+            const range = rangeOfNode({ ...reference.reference, sheet }, this.grid.index, cell.address);
+            this.addRange(range, precedents, inputs);
           }
           break;
         case 'name': {
-          const named = this.namedFormula(reference.name, reference.sheet ?? home.sheet);
+          const named = this.namedFormula(reference.name, reference.sheet ?? cell.grid.name);
           if (named !== undefined && nameDepth < maximumNameDepth) {
             this.collect(node, cell, named, nameDepth + 1, precedents, inputs);
           } else if (named === undefined && this.grid.index.table(reference.name) !== undefined) {
-            addRange(
-              rangeOfTable(
-                { kind: 'table', table: reference.name, columns: [], sections: [] },
-                this.grid.index,
-                home,
-              ),
-            );
+            const table = { kind: 'table', table: reference.name, columns: [], sections: [] } as const;
+            this.addRange(rangeOfTable(table, this.grid.index, cell.address), precedents, inputs);
           }
           break;
         }
@@ -257,6 +263,12 @@ export class DependencyGraph {
     const lower = names.map((name) => name.toLowerCase());
     const ends = [lower.indexOf(first.toLowerCase()), lower.indexOf(last.toLowerCase())];
     return ends.includes(-1) ? [] : names.slice(Math.min(...ends), Math.max(...ends) + 1);
+  }
+
+  private addRange(range: CellRange | ReferenceFault, precedents: GraphNode[], inputs: InputCell[]): void {
+    if (!isReferenceFault(range)) {
+      this.addArea(this.areaOf(range), precedents, inputs);
+    }
   }
 
   private areaOf(range: CellRange): Area {

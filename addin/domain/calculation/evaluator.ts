@@ -137,10 +137,10 @@ export class Evaluator implements FunctionContext {
    * where it stands for none or cannot be told.
    */
   resolveReference(cell: FormulaCell, node: FormulaNode): readonly Area[] | undefined {
-    const work = (): Value => this.inCell(cell, () => this.evaluateNode(node));
     for (;;) {
       try {
-        const value = work();
+        this.enter(cell);
+        const value = this.evaluateNode(node);
         return value instanceof Reference ? value.areas : value instanceof CellError ? undefined : [];
       } catch (error) {
         if (error === cellNeeded) {
@@ -158,6 +158,12 @@ export class Evaluator implements FunctionContext {
   // From cell to cell.
 
   private workOut(wanted: FormulaCell): CellOutcome {
+    // In the graph's order, this is all there is to it.
+    const direct = this.tryFormula(wanted);
+    if (direct !== undefined) {
+      this.outcomes[wanted.id] = direct;
+      return direct;
+    }
     const pending = [wanted];
     while (pending.length > 0) {
       const cell = pending[pending.length - 1];
@@ -201,7 +207,8 @@ export class Evaluator implements FunctionContext {
       return { kind: 'refused', refusal: new EvaluationRefusal(reason) };
     }
     try {
-      const value = this.inCell(cell, () => this.resultOf(cell, formula.tree));
+      this.enter(cell);
+      const value = this.resultOf(cell, formula.tree);
       return { kind: 'value', value: this.settings.settle?.(cell, value) ?? value };
     } catch (error) {
       if (error === cellNeeded) {
@@ -231,14 +238,13 @@ export class Evaluator implements FunctionContext {
     }
   }
 
-  private inCell<T>(cell: FormulaCell, work: () => T): T {
+  private enter(cell: FormulaCell): void {
     this.home = cell.grid;
     this.row = cell.row;
     this.column = cell.column;
     this.scope = undefined;
     this.scopeDepth = 0;
     this.takesOneValue = false;
-    return work();
   }
 
   private resultOf(cell: FormulaCell, tree: FormulaNode): Scalar | Matrix {

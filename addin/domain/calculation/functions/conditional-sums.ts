@@ -3,9 +3,9 @@
  * constant; what is summed or averaged may depend on decisions.
  */
 import { CellError } from '../../sheet/cell-value';
-import { compareValues, numberOfText } from '../coercions';
+import { compareValues, readNumber } from '../coercions';
 import { errorValue, isDependent, type Matrix, Reference, type Scalar, type Value } from '../evaluated-value';
-import { dependentValueRefusal, errorSignal, ErrorValueSignal } from '../evaluation-refusal';
+import { dependentValueRefusal, errorSignal } from '../evaluation-refusal';
 import { generalFunction, type FunctionContext, type FunctionTable } from '../worksheet-function';
 import { averageOf, finiteAmount } from './counted-amounts';
 import { patternOf } from './text-pattern';
@@ -76,17 +76,6 @@ function plainValueOf(text: string): Scalar {
     return CellError.of(upper);
   }
   return readNumber(text) ?? text;
-}
-
-function readNumber(text: string): number | undefined {
-  try {
-    return text.trim() === '' ? undefined : numberOfText(text);
-  } catch (error) {
-    if (error instanceof ErrorValueSignal) {
-      return undefined;
-    }
-    throw error;
-  }
 }
 
 /** Pairs of range and criterion → positions that meet all of them. @throws #VALUE! where shapes differ */
