@@ -1,7 +1,11 @@
 /**
  * The only door of the solver core. Everything outside imports from here.
  */
-export type { ReadonlyFloat64Array, ReadonlyInt32Array, ReadonlyUint8Array } from './numerics/typed-array-views';
+export type {
+  ReadonlyFloat64Array,
+  ReadonlyInt32Array,
+  ReadonlyUint8Array,
+} from './numerics/typed-array-views';
 export { BrokenInvariantError, InvalidProblemError, type InvalidProblemCode } from './control/solver-errors';
 export type { Progress } from './control/progress-event';
 export { nonzeroCount, type SparseMatrix } from './sparse/sparse-matrix';
@@ -20,6 +24,11 @@ export type {
   UnboundedResult,
 } from './linear-program/solve-result';
 export { readMps, readMpsWithWarnings, type MpsReading } from './formats/mps-reader';
-export { MpsSyntaxError, type MpsErrorCode, type MpsWarning, type MpsWarningCode } from './formats/mps-errors';
+export {
+  MpsSyntaxError,
+  type MpsErrorCode,
+  type MpsWarning,
+  type MpsWarningCode,
+} from './formats/mps-errors';
 export { writeMps } from './formats/mps-writer';
 export { solve, SolveSession, type SessionState } from './solve/solve-session';

@@ -37,6 +37,23 @@ export const tolerances = {
   leastEdgeWeight: 1e-4,
   /** Cost perturbation: base size, relative to a cost's magnitude (Koberstein 2005, §6.3.2). */
   costPerturbation: 5e-7,
+  /**
+   * Presolve, stated units: does this bound or row hold, are these two bounds one? Relative to 1 + the largest term
+   * or bound in play. Reason: two digits below what is accepted at the end, so that reductions leave room for it;
+   * what misses by more is left to the simplex, which brings evidence.
+   */
+  presolveFeasibility: 1e-9,
+  /** Presolve: is this reduced cost nonzero for certain, in every optimum? Relative to 1 + the largest term. */
+  presolveDominance: 1e-9,
+  /**
+   * Presolve: may this entry be the pivot by which a column is eliminated? Relative to the largest of its row and, for
+   * what it is added to, of its column. Reason: three digits are lost at most.
+   */
+  presolvePivot: 1e-3,
+  /** Presolve: is what an elimination leaves of an entry cancellation? Relative to the larger of its two terms. */
+  presolveCancellation: 1e-12,
+  /** Presolve: are two rows or columns parallel? Each entry relative to itself. Reason: roundings of one division. */
+  presolveParallel: 1e-13,
   /** Final acceptance, stated space: violation relative to 1 + the largest term of its sum (design §7). */
   acceptedResidual: 1e-7,
   /** Final acceptance, stated space: duality gap relative to 1 + |objective| (design §7). */

@@ -76,9 +76,10 @@ export class ActiveSubmatrix {
 
   /** Place of row's entry in a column, or −1. */
   findInColumn(column: number, row: number): number {
+    const { columnIndex } = this;
     const start = this.columnStart[column];
     const end = start + this.columnCount[column];
-    for (let at = start; at < end; at++) if (this.columnIndex[at] === row) return at;
+    for (let at = start; at < end; at++) if (columnIndex[at] === row) return at;
     return -1;
   }
 

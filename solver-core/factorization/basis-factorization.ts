@@ -18,8 +18,13 @@ import { divideInOrder, eliminateInOrder, reachOf, type ReachScratch } from './t
 
 /** A right side with more than this share of nonzeros is not worth a search for what it reaches. */
 const hyperSparseInput = 0.05;
-/** More than this share reached: the plain loop is cheaper. */
+/** More than this share reached, or expected from the solves before: the plain loop is cheaper. */
 const hyperSparseReach = 0.1;
+/** Weight of the latest solve in what is expected of the next of its kind. */
+const densityMemory = 0.05;
+
+/** What is solved for: solutions of one kind have about the same density from one iteration to the next. */
+export type SolveKind = 'entering column' | 'tableau row' | 'edge weights' | 'other';
 /** Updates after which the factors are renewed whatever their state. */
 const mostUpdates = 100;
 
@@ -39,6 +44,13 @@ export class BasisFactorization {
   /** Work units spent in here since the last time that the caller took them. */
   private work = 0;
   private threshold: number = tolerances.markowitzThreshold;
+  /** Share of nonzeros in recent solutions, by kind. */
+  private readonly expectedDensity: Record<SolveKind, number> = {
+    'entering column': 0,
+    'tableau row': 0,
+    'edge weights': 0,
+    other: 0,
+  };
 
   constructor(private readonly matrix: SparseMatrix) {
     const m = matrix.rowCount;
@@ -86,29 +98,38 @@ export class BasisFactorization {
 
   /**
    * x ← B⁻¹ x.
-   * @param keepsSpike this is the entering column: what `update` needs of it is kept
+   * @param kind of an 'entering column' what `update` needs is kept
    */
-  ftran(x: ScatteredVector, keepsSpike = false): void {
-    this.solveLower(x);
+  ftran(x: ScatteredVector, kind: SolveKind = 'other'): void {
+    const mayBeSparse = this.expectedDensity[kind] <= hyperSparseReach;
+    this.solveLower(x, mayBeSparse);
     this.applyEtas(x);
-    if (keepsSpike) this.keepSpike(x);
-    this.solveUpper(x);
+    if (kind === 'entering column') this.keepSpike(x);
+    this.solveUpper(x, mayBeSparse);
+    this.learnDensity(kind, x);
   }
 
   /**
    * y ← B⁻ᵀ y.
-   * @param keepsRow y is the unit vector of the leaving position: what `update` needs of it is kept
+   * @param kind of a 'tableau row' (y the unit vector of the leaving position) what `update` needs is kept
    */
-  btran(y: ScatteredVector, keepsRow = false): void {
-    this.solveUpperTransposed(y);
-    if (keepsRow) this.keepRow(y);
+  btran(y: ScatteredVector, kind: SolveKind = 'other'): void {
+    const mayBeSparse = this.expectedDensity[kind] <= hyperSparseReach;
+    this.solveUpperTransposed(y, mayBeSparse);
+    if (kind === 'tableau row') this.keepRow(y);
     this.applyEtasTransposed(y);
-    this.solveLowerTransposed(y);
+    this.solveLowerTransposed(y, mayBeSparse);
+    this.learnDensity(kind, y);
+  }
+
+  private learnDensity(kind: SolveKind, x: ScatteredVector): void {
+    const density = x.count / this.factors.rowCount;
+    this.expectedDensity[kind] += densityMemory * (density - this.expectedDensity[kind]);
   }
 
   /**
    * The basis after its variable at `position` was replaced by the one whose column went last through
-   * `ftran(…, true)`; the row went through `btran(…, true)`.
+   * `ftran` as the 'entering column'; the row went through `btran` as the 'tableau row'.
    * @param pivot the entering column's entry at the position, as computed by ftran
    */
   update(position: number, pivot: number): UpdateOutcome {
@@ -123,11 +144,11 @@ export class BasisFactorization {
     return outcome;
   }
 
-  private solveLower(x: ScatteredVector): void {
+  private solveLower(x: ScatteredVector, mayBeSparse: boolean): void {
     const f = this.factors;
     const m = f.rowCount;
     if (f.lowerCount === 0) return;
-    if (x.count >= 0 && x.count <= hyperSparseInput * m) {
+    if (mayBeSparse && x.count >= 0 && x.count <= hyperSparseInput * m) {
       const found = this.reach(x, f.lowerStart, f.lowerEnd, f.lowerIndex);
       if (found >= 0) {
         this.work += eliminateInOrder(
@@ -148,15 +169,25 @@ export class BasisFactorization {
     }
     this.work +=
       f.lowerCount +
-      eliminateInOrder(f.lowerOrder, 0, 1, f.lowerCount, f.lowerStart, f.lowerEnd, f.lowerIndex, f.lowerValue, x.value);
+      eliminateInOrder(
+        f.lowerOrder,
+        0,
+        1,
+        f.lowerCount,
+        f.lowerStart,
+        f.lowerEnd,
+        f.lowerIndex,
+        f.lowerValue,
+        x.value,
+      );
     x.count = -1;
   }
 
-  private solveLowerTransposed(y: ScatteredVector): void {
+  private solveLowerTransposed(y: ScatteredVector, mayBeSparse: boolean): void {
     const f = this.factors;
     const m = f.rowCount;
     if (f.lowerCount > 0) {
-      if (y.count >= 0 && y.count <= hyperSparseInput * m) {
+      if (mayBeSparse && y.count >= 0 && y.count <= hyperSparseInput * m) {
         const found = this.reach(y, f.lowerRowStart, f.lowerRowEnd, f.lowerRowIndex);
         if (found >= 0) {
           this.work += eliminateInOrder(
@@ -197,10 +228,10 @@ export class BasisFactorization {
     return touched;
   }
 
-  private solveUpper(x: ScatteredVector): void {
+  private solveUpper(x: ScatteredVector, mayBeSparse: boolean): void {
     const f = this.factors;
     const m = f.rowCount;
-    if (x.count >= 0 && x.count <= hyperSparseInput * m) {
+    if (mayBeSparse && x.count >= 0 && x.count <= hyperSparseInput * m) {
       const found = this.reach(x, f.upperStart, f.upperEnd, f.upperIndex);
       if (found >= 0) {
         this.divideReached(x, found, f.upperStart, f.upperEnd, f.upperIndex, f.upperValue);
@@ -224,10 +255,10 @@ export class BasisFactorization {
     this.work += f.upperCount + x.count;
   }
 
-  private solveUpperTransposed(y: ScatteredVector): void {
+  private solveUpperTransposed(y: ScatteredVector, mayBeSparse: boolean): void {
     const f = this.factors;
     const m = f.rowCount;
-    if (y.count >= 0 && y.count <= hyperSparseInput * m) {
+    if (mayBeSparse && y.count >= 0 && y.count <= hyperSparseInput * m) {
       const found = this.reach(y, f.upperRowStart, f.upperRowEnd, f.upperRowIndex);
       if (found >= 0) {
         this.divideReached(y, found, f.upperRowStart, f.upperRowEnd, f.upperRowIndex, f.upperRowValue);

@@ -58,7 +58,9 @@ export function appendUpdate(
   insertSpike(f, position, spike);
   f.diagonal[position] = expected;
   f.appendToUpperOrder(position);
-  const isAgreed = Math.abs(computed - expected) <= tolerances.updateAgreement * Math.max(Math.abs(expected), 1e-6 * largest);
+  const isAgreed =
+    Math.abs(computed - expected) <=
+    tolerances.updateAgreement * Math.max(Math.abs(expected), 1e-6 * largest);
   return isAgreed && expected !== 0 ? 'updated' : 'unstable';
 }
 

@@ -174,7 +174,8 @@ export class LuFactorizer {
    */
   private peelSingletons(basicVariable: Int32Array, settings: FactorizeSettings): void {
     const { columnCount: n, rowCount: m, columnStart, rowIndex, value } = this.matrix;
-    const { queue, activeInColumn, activeInRow, isRowDone, rowOfPosition, patternStart, patternPosition } = this;
+    const { queue, activeInColumn, activeInRow, isRowDone, rowOfPosition, patternStart, patternPosition } =
+      this;
     let queueEnd = 0;
     // Positions are queued as they are, rows as −1 − row.
     for (let position = 0; position < m; position++) {
@@ -210,13 +211,16 @@ export class LuFactorizer {
       isRowDone[row] = 1;
       for (let entry = columnStart[variable]; entry < columnStart[variable + 1]; entry++) {
         const other = rowIndex[entry];
-        if (isRowDone[other] === 0 && --activeInRow[other] === 1 && queueEnd < queue.length) queue[queueEnd++] = -1 - other;
+        if (isRowDone[other] === 0 && --activeInRow[other] === 1 && queueEnd < queue.length)
+          queue[queueEnd++] = -1 - other;
       }
       for (let at = patternStart[row]; at < patternStart[row + 1]; at++) {
         const other = patternPosition[at];
-        if (rowOfPosition[other] < 0 && --activeInColumn[other] === 1 && queueEnd < queue.length) queue[queueEnd++] = other;
+        if (rowOfPosition[other] < 0 && --activeInColumn[other] === 1 && queueEnd < queue.length)
+          queue[queueEnd++] = other;
       }
-      this.work += columnStart[variable + 1] - columnStart[variable] + patternStart[row + 1] - patternStart[row];
+      this.work +=
+        columnStart[variable + 1] - columnStart[variable] + patternStart[row + 1] - patternStart[row];
     }
   }
 
@@ -315,9 +319,61 @@ export class LuFactorizer {
     }
   }
 
+  /**
+   * Subtracts `entry` × the pivot column's multipliers from a column.
+   * hot: once for each other entry of each pivot row.
+   * @returns largest magnitude in the column afterwards
+   */
+  private updateColumn(
+    column: number,
+    entry: number,
+    lowerStart: number,
+    lowerEnd: number,
+    drop: number,
+  ): number {
+    const { active, scratchMultiplier, scratchMark } = this;
+    const { columnIndex, columnValue } = active;
+    const mark = ++this.mark;
+    let largest = 0;
+    let marked = 0;
+    let end = active.columnStart[column] + active.columnCount[column];
+    for (let place = active.columnStart[column]; place < end; place++) {
+      const row = columnIndex[place];
+      const multiplier = scratchMultiplier[row];
+      let size: number;
+      if (multiplier === 0) {
+        size = columnValue[place];
+      } else {
+        scratchMark[row] = mark;
+        marked++;
+        size = columnValue[place] - multiplier * entry;
+        columnValue[place] = size;
+      }
+      if (size < 0) size = -size;
+      if (size < drop && multiplier !== 0) {
+        active.removeColumnEntry(column, place);
+        active.removeFromRow(row, column);
+        place--;
+        end--;
+      } else if (size > largest) largest = size;
+    }
+    if (marked === lowerEnd - lowerStart) return largest;
+    const { lowerIndex, lowerValue } = this.factors;
+    for (let lower = lowerStart; lower < lowerEnd; lower++) {
+      const row = lowerIndex[lower];
+      if (scratchMark[row] === mark) continue;
+      const filled = -lowerValue[lower] * entry;
+      const size = filled < 0 ? -filled : filled;
+      if (size < drop) continue;
+      active.addEntry(row, column, filled);
+      if (size > largest) largest = size;
+    }
+    return largest;
+  }
+
   /** Takes out one pivot: stores its columns of L and U and updates the rest. */
   private eliminate(pivotRow: number, pivotColumn: number, drop: number): void {
-    const { active, columnsByCount, rowsByCount, factors, scratchMultiplier, scratchMark, columnLargest } = this;
+    const { active, columnsByCount, rowsByCount, factors, scratchMultiplier, columnLargest } = this;
     const pivotAt = active.findInColumn(pivotColumn, pivotRow);
     const pivot = active.columnValue[pivotAt];
     columnsByCount.remove(pivotColumn, active.columnCount[pivotColumn]);
@@ -355,34 +411,9 @@ export class LuFactorizer {
       active.removeColumnEntry(column, at);
       this.pushUpper(column, pivotRow, entry);
       if (lowerCount > 0) {
-        const mark = ++this.mark;
-        const start = active.columnStart[column];
-        let end = start + active.columnCount[column];
-        for (let place = start; place < end; place++) {
-          const row = active.columnIndex[place];
-          const multiplier = scratchMultiplier[row];
-          if (multiplier === 0) continue;
-          scratchMark[row] = mark;
-          const updated = active.columnValue[place] - multiplier * entry;
-          if (updated > -drop && updated < drop) {
-            active.removeColumnEntry(column, place);
-            active.removeFromRow(row, column);
-            place--;
-            end--;
-          } else {
-            active.columnValue[place] = updated;
-          }
-        }
-        for (let lower = lowerStart; lower < lowerEnd; lower++) {
-          const row = factors.lowerIndex[lower];
-          if (scratchMark[row] === mark) continue;
-          const filled = -factors.lowerValue[lower] * entry;
-          if (filled > -drop && filled < drop) continue;
-          active.addEntry(row, column, filled);
-        }
+        columnLargest[column] = this.updateColumn(column, entry, lowerStart, lowerEnd, drop);
         this.work += active.columnCount[column] + lowerCount;
-      }
-      columnLargest[column] = -1;
+      } else columnLargest[column] = -1;
       columnsByCount.insert(column, active.columnCount[column]);
     }
     for (let lower = lowerStart; lower < lowerEnd; lower++) {

@@ -146,7 +146,16 @@ export class LuFactors {
   }
 
   private buildUpperRows(): void {
-    const { rowCount, upperStart, upperEnd, upperIndex, upperValue, upperRowStart, upperRowEnd, upperRowLimit } = this;
+    const {
+      rowCount,
+      upperStart,
+      upperEnd,
+      upperIndex,
+      upperValue,
+      upperRowStart,
+      upperRowEnd,
+      upperRowLimit,
+    } = this;
     upperRowEnd.fill(0);
     for (let entry = 0; entry < this.upperSize; entry++) upperRowEnd[upperIndex[entry]]++;
     let at = 0;

@@ -37,25 +37,24 @@ export class MarkowitzPivotSearch {
       for (let column = columnsByCount.firstWith(count); column >= 0; column = columnsByCount.after(column)) {
         const largest = largestInColumn(active, column, columnLargest);
         if (largest < singularPivot) continue;
+        const { columnIndex, columnValue, rowCount } = active;
+        const wanted = threshold * largest;
         const start = active.columnStart[column];
         const end = start + active.columnCount[column];
         for (let at = start; at < end; at++) {
-          const size = Math.abs(active.columnValue[at]);
-          if (size < threshold * largest) continue;
-          const row = active.columnIndex[at];
-          const merit = (count - 1) * (active.rowCount[row] - 1);
-          if (merit < bestMerit) {
-            bestMerit = merit;
-            this.pivotRow = row;
-            this.pivotColumn = column;
-          }
+          const row = columnIndex[at];
+          const merit = (count - 1) * (rowCount[row] - 1);
+          if (merit >= bestMerit || Math.abs(columnValue[at]) < wanted) continue;
+          bestMerit = merit;
+          this.pivotRow = row;
+          this.pivotColumn = column;
         }
-        if (this.pivotRow >= 0 && (++looked >= searchDepth || bestMerit <= (count - 1) * (count - 1))) return true;
+        if (this.pivotRow >= 0 && (++looked >= searchDepth || bestMerit <= (count - 1) * (count - 1)))
+          return true;
       }
       for (let row = rowsByCount.firstWith(count); row >= 0; row = rowsByCount.after(row)) {
         const start = active.rowStart[row];
         const end = start + active.rowCount[row];
-        let foundHere = false;
         for (let at = start; at < end; at++) {
           const column = active.rowIndex[at];
           const merit = (count - 1) * (active.columnCount[column] - 1);
@@ -67,9 +66,8 @@ export class MarkowitzPivotSearch {
           bestMerit = merit;
           this.pivotRow = row;
           this.pivotColumn = column;
-          foundHere = true;
         }
-        if (foundHere && (++looked >= searchDepth || bestMerit <= count * (count - 1))) return true;
+        if (this.pivotRow >= 0 && (++looked >= searchDepth || bestMerit <= count * (count - 1))) return true;
       }
     }
     return this.pivotRow >= 0;

@@ -14,25 +14,18 @@ export function chooseLeavingRow(
   iterate: SimplexIterate,
   weight: ReadonlyFloat64Array,
   isBarred: Uint8Array,
-  tolerance: number,
 ): number {
   const { basicVariable } = iterate.basis;
-  const { lower, upper } = iterate.bounds;
-  const z = iterate.primal.value;
+  const { squaredInfeasibility } = iterate.primal;
   const m = iterate.form.rowCount;
   let best = -1;
   let bestMerit = 0;
   for (let position = 0; position < m; position++) {
-    const variable = basicVariable[position];
-    const at = z[variable];
-    let infeasibility = lower[variable] - at;
-    if (infeasibility < tolerance) {
-      infeasibility = at - upper[variable];
-      if (infeasibility < tolerance) continue;
-    }
-    const merit = infeasibility * infeasibility;
-    if (merit > bestMerit * weight[variable] && isBarred[position] === 0) {
-      bestMerit = merit / weight[variable];
+    const merit = squaredInfeasibility[position];
+    if (merit === 0) continue;
+    const edgeWeight = weight[basicVariable[position]];
+    if (merit > bestMerit * edgeWeight && isBarred[position] === 0) {
+      bestMerit = merit / edgeWeight;
       best = position;
     }
   }

@@ -34,9 +34,10 @@ export class DualRatioTest {
    * @param row tableau row of the leaving position, nonbasic entries listed
    * @param sign +1 when the leaving variable is above its upper bound, −1 when below its lower one
    * @param infeasibility by how much (> 0)
+   * @param primalTolerance what may be left of it
    * @returns entering variable, or −1: with every breakpoint passed the row stays infeasible
    */
-  choose(row: ScatteredVector, sign: number, infeasibility: number): number {
+  choose(row: ScatteredVector, sign: number, infeasibility: number, primalTolerance: number): number {
     const { heap, passed, groupStart } = this;
     const slack = tolerances.harrisDualSlack;
     this.flipCount = 0;
@@ -64,14 +65,13 @@ export class DualRatioTest {
       isBlocked = slope < 0;
     }
     groupStart[groupCount] = passedCount;
-    if (!isBlocked && slope > tolerances.primalFeasibility) return -1;
+    if (!isBlocked && slope > primalTolerance) return -1;
     return this.chooseAmongGroups(groupCount, alpha, largestPivot);
   }
 
   private collectBreakpoints(row: ScatteredVector, sign: number): void {
     const { heap } = this;
     const { status } = this.iterate.basis;
-    const { lower, upper } = this.iterate.bounds;
     const d = this.iterate.reduced.value;
     const { index, value, count } = row;
     heap.clear();
@@ -81,10 +81,10 @@ export class DualRatioTest {
       const stands = status[variable];
       let step: number;
       if (stands === VariableStatus.atLower) {
-        if (entry < tolerances.ratioTestPivot || lower[variable] === upper[variable]) continue;
+        if (entry < tolerances.ratioTestPivot) continue;
         step = d[variable] / entry;
       } else if (stands === VariableStatus.atUpper) {
-        if (entry > -tolerances.ratioTestPivot || lower[variable] === upper[variable]) continue;
+        if (entry > -tolerances.ratioTestPivot) continue;
         step = d[variable] / entry;
       } else {
         if (entry < tolerances.ratioTestPivot && entry > -tolerances.ratioTestPivot) continue;

@@ -43,7 +43,7 @@ export class DualSimplex {
   }
 
   /** Iterates until an end is known, the slice of work is spent or the iteration limit is reached. */
-  run(meter: WorkMeter, feasibilityTolerance: number, iterationLimit: number): LoopEnd {
+  run(meter: WorkMeter, iterationLimit: number): LoopEnd {
     const { iterate } = this;
     const { factorization } = iterate;
     for (;;) {
@@ -51,7 +51,7 @@ export class DualSimplex {
       if (meter.isSliceSpent) return 'paused';
       if (iterate.iterations >= iterationLimit) return 'limit';
       if (this.needsFactorization || factorization.shouldRefactorize) this.renew();
-      const position = this.choosePosition(feasibilityTolerance, meter);
+      const position = this.choosePosition(meter);
       if (position < 0) {
         if (factorization.updateCount > 0) {
           this.needsFactorization = true; // believed only with fresh values
@@ -71,18 +71,18 @@ export class DualSimplex {
   }
 
   /** The leaving position, its weight compared with the exact one that btran gives (ρ is left in place). */
-  private choosePosition(tolerance: number, meter: WorkMeter): number {
+  private choosePosition(meter: WorkMeter): number {
     const { iterate, rho, weights } = this;
     const m = iterate.form.rowCount;
     for (;;) {
-      const position = chooseLeavingRow(iterate, weights.weight, this.isBarred, tolerance);
+      const position = chooseLeavingRow(iterate, weights.weight, this.isBarred);
       meter.spend(m);
       if (position < 0) return position;
       rho.clear();
       rho.value[position] = 1;
       rho.index[0] = position;
       rho.count = 1;
-      iterate.factorization.btran(rho, true);
+      iterate.factorization.btran(rho, 'tableau row');
       const variable = iterate.basis.basicVariable[position];
       const stored = weights.weight[variable];
       let exact = 0;
@@ -103,7 +103,7 @@ export class DualSimplex {
     const leaving = basis.basicVariable[position];
     const isAbove = primal.value[leaving] > bounds.upper[leaving];
     const sign = isAbove ? 1 : -1;
-    const entering = ratioTest.choose(row, sign, primal.infeasibility(leaving));
+    const entering = ratioTest.choose(row, sign, primal.infeasibility(leaving), primal.tolerance);
     meter.spend(2 * row.count);
     if (entering < 0) {
       if (factorization.updateCount > 0) {
@@ -115,7 +115,7 @@ export class DualSimplex {
       return 'infeasible';
     }
     iterate.loadColumn(entering, column);
-    factorization.ftran(column, true);
+    factorization.ftran(column, 'entering column');
     const alpha = column.value[position];
     const rowAlpha = row.value[entering];
     if (!this.isTrusted(alpha, rowAlpha)) {
@@ -129,7 +129,7 @@ export class DualSimplex {
     this.keepReducedCostFeasible(entering);
     iterate.flipBounds(ratioTest.flips, ratioTest.flipCount);
     tau.copyFrom(rho);
-    factorization.ftran(tau);
+    factorization.ftran(tau, 'edge weights');
     weights.update(position, entering, alpha, column, tau);
     const bound = isAbove ? bounds.upper[leaving] : bounds.lower[leaving];
     const outcome = iterate.applyPivot(

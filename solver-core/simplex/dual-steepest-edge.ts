@@ -40,7 +40,13 @@ export class DualSteepestEdge {
    * @param column α_q = B⁻¹ a_q
    * @param tau B⁻¹ ρ with ρ = B⁻ᵀ e_position
    */
-  update(position: number, entering: number, alpha: number, column: ScatteredVector, tau: ScatteredVector): void {
+  update(
+    position: number,
+    entering: number,
+    alpha: number,
+    column: ScatteredVector,
+    tau: ScatteredVector,
+  ): void {
     const { weights } = this;
     const { basicVariable } = this.basis;
     const leavingWeight = weights[basicVariable[position]];

@@ -37,7 +37,8 @@ export function loadSnapshot(form: ComputationalForm, snapshot: Basis, basis: Wo
       status[variable] = nonbasicStatus(variable, lower, upper, stands === VariableStatus.atUpper);
     }
   };
-  for (let column = 0; column < n; column++) place(column, snapshot.columnStatus[column], VariableStatus.atLower);
+  for (let column = 0; column < n; column++)
+    place(column, snapshot.columnStatus[column], VariableStatus.atLower);
   for (let row = 0; row < m; row++) place(n + row, snapshot.rowStatus[row], VariableStatus.basic);
   for (let row = 0; row < m && basic.length < m; row++) {
     if (status[n + row] === VariableStatus.basic) continue;

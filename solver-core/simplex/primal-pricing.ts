@@ -31,7 +31,11 @@ export function chooseEnteringVariable(
     if (stands === VariableStatus.atLower && reducedCost > 0) continue;
     if (stands === VariableStatus.atUpper && reducedCost < 0) continue;
     const merit = reducedCost * reducedCost;
-    if (merit > bestMerit * weight[variable] && isBarred[variable] === 0 && lower[variable] !== upper[variable]) {
+    if (
+      merit > bestMerit * weight[variable] &&
+      isBarred[variable] === 0 &&
+      lower[variable] !== upper[variable]
+    ) {
       bestMerit = merit / weight[variable];
       best = variable;
     }
@@ -43,7 +47,11 @@ export function chooseEnteringVariable(
  * The first variable, by number, whose reduced cost has the wrong sign: with the least-number rule for leaving it
  * cannot cycle. Source: Bland (1977), "New finite pivoting rules for the simplex method", Math. of O.R. 2.
  */
-export function chooseFirstEnteringVariable(iterate: SimplexIterate, isBarred: Uint8Array, tolerance: number): number {
+export function chooseFirstEnteringVariable(
+  iterate: SimplexIterate,
+  isBarred: Uint8Array,
+  tolerance: number,
+): number {
   for (let variable = 0; variable < iterate.form.variableCount; variable++) {
     if (isBarred[variable] === 0 && iterate.reduced.infeasibility(variable) > tolerance) return variable;
   }

@@ -145,7 +145,8 @@ export class PrimalRatioTest {
       const upper = bounds.upper[variable];
       if (rate > 0) {
         if (at < lower - tolerance) heap.push(position, (lower - at) / rate);
-        if (at <= upper + tolerance && upper < Infinity) heap.push(m + position, Math.max(0, upper - at) / rate);
+        if (at <= upper + tolerance && upper < Infinity)
+          heap.push(m + position, Math.max(0, upper - at) / rate);
       } else {
         if (at > upper + tolerance) heap.push(m + position, (upper - at) / rate);
         if (at >= lower - tolerance && lower > -Infinity) heap.push(position, Math.min(0, lower - at) / rate);

@@ -134,13 +134,14 @@ export class PrimalSimplex {
     const { iterate, column, ratioTest } = this;
     const { factorization, reduced } = iterate;
     iterate.loadColumn(entering, column);
-    factorization.ftran(column, true);
+    factorization.ftran(column, 'entering column');
     const exact = this.reducedCostFromColumn(entering);
     const stored = reduced.value[entering];
     reduced.set(entering, exact);
     if (reduced.infeasibility(entering) <= dualTolerance || exact * stored < 0) {
       // The stored value was wrong: believe the new one, and look for better ones when it was far off.
-      if (factorization.updateCount > 0 && Math.abs(exact - stored) > 1e3 * dualTolerance) this.needsFactorization = true;
+      if (factorization.updateCount > 0 && Math.abs(exact - stored) > 1e3 * dualTolerance)
+        this.needsFactorization = true;
       return undefined;
     }
     const direction = exact > 0 ? -1 : 1;
@@ -204,11 +205,14 @@ export class PrimalSimplex {
     rho.value[position] = 1;
     rho.index[0] = position;
     rho.count = 1;
-    factorization.btran(rho, true);
+    factorization.btran(rho, 'tableau row');
     meter.spend(tableauRow(iterate.form, rho, basis.status, row));
     const rowAlpha = row.value[entering];
     const disagreement = Math.abs(alpha - rowAlpha);
-    if (disagreement > tolerances.pivotAgreement * (1 + Math.abs(alpha)) || disagreement > 0.01 * Math.abs(alpha)) {
+    if (
+      disagreement > tolerances.pivotAgreement * (1 + Math.abs(alpha)) ||
+      disagreement > 0.01 * Math.abs(alpha)
+    ) {
       if (factorization.updateCount > 0) this.needsFactorization = true;
       else this.bar(entering);
       return undefined;

@@ -7,24 +7,34 @@ import type { ReadonlyFloat64Array } from '../numerics/typed-array-views';
 import { ScatteredVector } from '../sparse/scattered-vector';
 import type { BasisFactorization } from '../factorization/basis-factorization';
 import type { ComputationalForm } from './computational-form';
-import type { WorkingBasis } from './working-basis';
+import { nonbasicFixed, type WorkingBasis } from './working-basis';
 import type { WorkingBounds } from './working-bounds';
 
 export class PrimalValues {
   private readonly z: Float64Array;
+  /** Length m: squared infeasibility of each position's variable, 0 within the tolerance. */
+  private readonly squares: Float64Array;
   private readonly scratchColumn: ScatteredVector;
 
   constructor(
     private readonly form: ComputationalForm,
     private readonly basis: WorkingBasis,
     private readonly bounds: WorkingBounds,
+    /** Infeasibilities up to this count as none; absolute, space of the form. */
+    readonly tolerance: number,
   ) {
+    this.squares = new Float64Array(form.rowCount);
     this.z = new Float64Array(form.variableCount);
     this.scratchColumn = new ScatteredVector(form.rowCount);
   }
 
   get value(): ReadonlyFloat64Array {
     return this.z;
+  }
+
+  /** Length m, by position: infeasibility² of the basic variable, 0 where it is within the tolerance. */
+  get squaredInfeasibility(): ReadonlyFloat64Array {
+    return this.squares;
   }
 
   /** All values afresh from statuses and bounds. */
@@ -47,7 +57,10 @@ export class PrimalValues {
     }
     scratchColumn.count = -1;
     factorization.ftran(scratchColumn);
-    for (let position = 0; position < form.rowCount; position++) z[basis.basicVariable[position]] = right[position];
+    for (let position = 0; position < form.rowCount; position++) {
+      z[basis.basicVariable[position]] = right[position];
+      this.watch(position);
+    }
     right.fill(0);
     scratchColumn.count = 0;
   }
@@ -59,13 +72,21 @@ export class PrimalValues {
     if (direction.count < 0) {
       for (let position = 0; position < this.form.rowCount; position++) {
         z[basicVariable[position]] -= step * direction.value[position];
+        this.watch(position);
       }
       return;
     }
     for (let k = 0; k < direction.count; k++) {
       const position = direction.index[k];
       z[basicVariable[position]] -= step * direction.value[position];
+      this.watch(position);
     }
+  }
+
+  /** Takes down the infeasibility of a position after its value, its variable or its bounds changed. */
+  watch(position: number): void {
+    const amount = this.infeasibility(this.basis.basicVariable[position]);
+    this.squares[position] = amount > this.tolerance ? amount * amount : 0;
   }
 
   set(variable: number, value: number): void {
@@ -80,6 +101,7 @@ export class PrimalValues {
   restingValue(variable: number): number {
     switch (this.basis.status[variable]) {
       case VariableStatus.atLower:
+      case nonbasicFixed:
         return this.bounds.lower[variable];
       case VariableStatus.atUpper:
         return this.bounds.upper[variable];
@@ -91,7 +113,10 @@ export class PrimalValues {
   /** By how much a variable lies outside its bounds; 0 inside. */
   infeasibility(variable: number): number {
     const at = this.z[variable];
-    return Math.max(0, this.bounds.lower[variable] - at, at - this.bounds.upper[variable]);
+    const below = this.bounds.lower[variable] - at;
+    if (below > 0) return below;
+    const above = at - this.bounds.upper[variable];
+    return above > 0 ? above : 0;
   }
 
   /** Sum and greatest of the basic variables' infeasibilities above a tolerance. */

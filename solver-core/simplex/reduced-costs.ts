@@ -9,7 +9,6 @@ import { ScatteredVector } from '../sparse/scattered-vector';
 import type { BasisFactorization } from '../factorization/basis-factorization';
 import type { ComputationalForm } from './computational-form';
 import type { WorkingBasis } from './working-basis';
-import type { WorkingBounds } from './working-bounds';
 import type { WorkingCosts } from './working-costs';
 
 export class ReducedCosts {
@@ -19,7 +18,6 @@ export class ReducedCosts {
   constructor(
     private readonly form: ComputationalForm,
     private readonly basis: WorkingBasis,
-    private readonly bounds: WorkingBounds,
     private readonly costs: WorkingCosts,
   ) {
     this.d = new Float64Array(form.variableCount);
@@ -35,7 +33,8 @@ export class ReducedCosts {
     const { form, basis, d, scratchRow } = this;
     const { cost } = this.costs;
     const y = scratchRow.value;
-    for (let position = 0; position < form.rowCount; position++) y[position] = cost[basis.basicVariable[position]];
+    for (let position = 0; position < form.rowCount; position++)
+      y[position] = cost[basis.basicVariable[position]];
     scratchRow.count = -1;
     factorization.btran(scratchRow);
     for (let variable = 0; variable < form.columnCount; variable++) d[variable] = cost[variable];
@@ -44,7 +43,8 @@ export class ReducedCosts {
       const price = y[row];
       d[form.columnCount + row] = cost[form.columnCount + row] + price;
       if (price === 0) continue;
-      for (let entry = columnStart[row]; entry < columnStart[row + 1]; entry++) d[rowIndex[entry]] -= price * value[entry];
+      for (let entry = columnStart[row]; entry < columnStart[row + 1]; entry++)
+        d[rowIndex[entry]] -= price * value[entry];
     }
     for (let position = 0; position < form.rowCount; position++) d[basis.basicVariable[position]] = 0;
     y.fill(0);
@@ -70,14 +70,14 @@ export class ReducedCosts {
   infeasibility(variable: number): number {
     const reducedCost = this.d[variable];
     switch (this.basis.status[variable]) {
-      case VariableStatus.basic:
-        return 0;
       case VariableStatus.free:
         return Math.abs(reducedCost);
       case VariableStatus.atLower:
-        return this.bounds.lower[variable] === this.bounds.upper[variable] ? 0 : Math.max(0, -reducedCost);
+        return Math.max(0, -reducedCost);
+      case VariableStatus.atUpper:
+        return Math.max(0, reducedCost);
       default:
-        return this.bounds.lower[variable] === this.bounds.upper[variable] ? 0 : Math.max(0, reducedCost);
+        return 0; // basic or fixed
     }
   }
 

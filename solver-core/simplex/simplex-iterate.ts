@@ -10,7 +10,7 @@ import { ScatteredVector } from '../sparse/scattered-vector';
 import type { ComputationalForm } from './computational-form';
 import { PrimalValues } from './primal-values';
 import { ReducedCosts } from './reduced-costs';
-import { nonbasicStatus, WorkingBasis } from './working-basis';
+import { nonbasicFixed, nonbasicStatus, WorkingBasis } from './working-basis';
 import { WorkingBounds } from './working-bounds';
 import { WorkingCosts } from './working-costs';
 
@@ -42,12 +42,16 @@ export class SimplexIterate {
   repairs = 0;
   private readonly scratchFlip: ScatteredVector;
 
-  constructor(readonly form: ComputationalForm) {
+  constructor(
+    readonly form: ComputationalForm,
+    /** Primal feasibility, absolute, in the space of the form. */
+    primalTolerance: number,
+  ) {
     this.basis = new WorkingBasis(form.rowCount, form.columnCount);
     this.bounds = new WorkingBounds(form);
     this.costs = new WorkingCosts(form);
-    this.primal = new PrimalValues(form, this.basis, this.bounds);
-    this.reduced = new ReducedCosts(form, this.basis, this.bounds, this.costs);
+    this.primal = new PrimalValues(form, this.basis, this.bounds, primalTolerance);
+    this.reduced = new ReducedCosts(form, this.basis, this.costs);
     this.factorization = new BasisFactorization(form.matrix);
     this.scratchFlip = new ScatteredVector(form.rowCount);
   }
@@ -84,8 +88,10 @@ export class SimplexIterate {
     this.reduced.set(leaving, -dualStep);
     this.primal.stepBasics(primalStep, column);
     this.primal.add(entering, primalStep);
-    this.basis.replace(position, entering, leavingStatus);
+    const isFixed = this.bounds.lower[leaving] === this.bounds.upper[leaving];
+    this.basis.replace(position, entering, isFixed ? nonbasicFixed : leavingStatus);
     this.primal.set(leaving, this.primal.restingValue(leaving));
+    this.primal.watch(position);
     this.iterations++;
     return this.factorization.update(position, pivot.alpha);
   }
@@ -124,6 +130,52 @@ export class SimplexIterate {
     this.factorization.ftran(scratchFlip);
     primal.stepBasics(1, scratchFlip);
     scratchFlip.clear();
+  }
+
+  /** The box of dual phase one; variables that it fixes are left out of tableau rows, so their d are stale at its end. */
+  boxBounds(): void {
+    this.bounds.boxForPhaseOne();
+    this.restAtRightBounds();
+  }
+
+  restoreBounds(): void {
+    this.bounds.restore();
+    this.alignStatuses();
+  }
+
+  relaxBounds(seed: number, size: number): void {
+    this.bounds.relax(seed, size);
+    this.alignStatuses();
+  }
+
+  /** Statuses that fit the bounds in use, on the same side where there is one. Values must be recomputed after. */
+  private alignStatuses(): void {
+    const { basis, bounds } = this;
+    for (let variable = 0; variable < this.form.variableCount; variable++) {
+      const stands = basis.status[variable];
+      if (stands === VariableStatus.basic) continue;
+      const isUpper = stands === VariableStatus.atUpper;
+      basis.setStatus(variable, nonbasicStatus(variable, bounds.lower, bounds.upper, isUpper));
+    }
+  }
+
+  /**
+   * Shifts the cost of every variable whose reduced cost has the wrong sign by no more than `largest`, so that it
+   * becomes 0. @returns whether none is left wrong
+   */
+  shiftCostsToFeasibility(tolerance: number, largest: number): boolean {
+    const { reduced, costs } = this;
+    let isFeasible = true;
+    for (let variable = 0; variable < this.form.variableCount; variable++) {
+      const amount = reduced.infeasibility(variable);
+      if (amount <= tolerance) continue;
+      if (amount > largest) isFeasible = false;
+      else {
+        costs.shift(variable, -reduced.value[variable]);
+        reduced.set(variable, 0);
+      }
+    }
+    return isFeasible;
   }
 
   /** Puts every nonbasic boxed variable at the bound that its reduced cost asks for, and others where they can be. */

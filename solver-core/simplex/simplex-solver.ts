@@ -38,6 +38,8 @@ export type SimplexEnd =
 const mostStageChanges = 40;
 /** Size of the relaxation of bounds against stalls, relative. */
 const relaxation = 1e-6;
+/** What dual phase one leaves of infeasibilities up to this, absolute, is shifted away: tolerances of its ratio tests. */
+const smallCostShift = 1e-4;
 
 export class SimplexSolver {
   readonly iterate: SimplexIterate;
@@ -52,7 +54,7 @@ export class SimplexSolver {
     private readonly form: ComputationalForm,
     private readonly settings: SimplexSettings,
   ) {
-    this.iterate = new SimplexIterate(form);
+    this.iterate = new SimplexIterate(form, settings.primalTolerance);
     this.dual = new DualSimplex(this.iterate);
     this.primal = new PrimalSimplex(this.iterate);
   }
@@ -87,9 +89,28 @@ export class SimplexSolver {
     else loadSnapshot(form, settings.startBasis, iterate.basis);
     if (settings.perturbsCosts) iterate.costs.perturb(1);
     iterate.refactorize();
+    if (settings.startBasis !== undefined) {
+      this.enterFromSnapshot();
+      return;
+    }
     iterate.restAtRightBounds();
     if (iterate.reduced.infeasibilities(settings.dualTolerance).count > 0) this.enterDualPhaseOne();
     else this.currentStage = 'dual';
+  }
+
+  /**
+   * From a basis of a similar problem: the primal algorithm where it is primal feasible, otherwise the dual one, costs
+   * shifted where reduced costs are wrong; the primal algorithm then takes the shifts away again.
+   */
+  private enterFromSnapshot(): void {
+    const { iterate, settings } = this;
+    if (iterate.primal.infeasibilities(settings.primalTolerance).count === 0) {
+      this.enterPrimal();
+      return;
+    }
+    iterate.restAtRightBounds();
+    iterate.shiftCostsToFeasibility(settings.dualTolerance, Infinity);
+    this.currentStage = 'dual';
   }
 
   private runStage(meter: WorkMeter): LoopEnd {
@@ -97,7 +118,7 @@ export class SimplexSolver {
     if (this.currentStage === 'primal') {
       return this.primal.run(meter, primalTolerance, dualTolerance, iterationLimit);
     }
-    return this.dual.run(meter, primalTolerance, iterationLimit);
+    return this.dual.run(meter, iterationLimit);
   }
 
   /** What comes after a stage: another stage (undefined) or the end. */
@@ -115,9 +136,10 @@ export class SimplexSolver {
 
   private afterDualPhaseOne(): undefined {
     const { iterate, settings } = this;
-    iterate.bounds.restore();
+    iterate.restoreBounds();
+    iterate.reduced.recompute(iterate.factorization);
     iterate.restAtRightBounds();
-    if (iterate.reduced.infeasibilities(settings.dualTolerance).count === 0) {
+    if (iterate.shiftCostsToFeasibility(settings.dualTolerance, smallCostShift)) {
       this.currentStage = 'dual';
       return;
     }
@@ -125,10 +147,12 @@ export class SimplexSolver {
       iterate.costs.restore();
       iterate.reduced.recompute(iterate.factorization);
       iterate.restAtRightBounds();
-      if (iterate.reduced.infeasibilities(settings.dualTolerance).count === 0) {
+      if (iterate.shiftCostsToFeasibility(settings.dualTolerance, smallCostShift)) {
         this.currentStage = 'dual';
         return;
       }
+      iterate.costs.restore();
+      iterate.reduced.recompute(iterate.factorization);
     }
     this.enterPrimal(); // no dual feasible basis: the objective is unbounded if there is a feasible point
   }
@@ -145,7 +169,8 @@ export class SimplexSolver {
       iterate.costs.restore();
       iterate.reduced.recompute(iterate.factorization);
     }
-    if (end === 'optimal' && iterate.reduced.infeasibilities(settings.dualTolerance).count === 0) return { kind: 'optimal' };
+    if (end === 'optimal' && iterate.reduced.infeasibilities(settings.dualTolerance).count === 0)
+      return { kind: 'optimal' };
     if (end !== 'optimal') iterate.factorization.tightenThreshold();
     this.enterPrimal();
     return undefined;
@@ -156,7 +181,7 @@ export class SimplexSolver {
     if (end === 'stalled') return this.afterStall();
     if (iterate.bounds.kind === 'relaxed') {
       // Whatever was found, it was found for slightly wider bounds: back to the stated ones.
-      iterate.bounds.restore();
+      iterate.restoreBounds();
       iterate.costs.restore();
       iterate.refactorize();
       if (end === 'optimal') {
@@ -184,11 +209,9 @@ export class SimplexSolver {
   /** First slightly wider bounds, then the least-number rule, which ends for certain. */
   private afterStall(): undefined {
     const { iterate, primal } = this;
-    iterate.bounds.restore();
-    if (this.timesRelaxed < 3) {
-      this.timesRelaxed++;
-      iterate.bounds.relax(this.timesRelaxed, relaxation);
-    } else {
+    if (this.timesRelaxed < 3) iterate.relaxBounds(++this.timesRelaxed, relaxation);
+    else {
+      iterate.restoreBounds();
       primal.usesLeastNumberRule = true;
       primal.reportsStalls = false;
     }
@@ -198,8 +221,7 @@ export class SimplexSolver {
 
   private enterDualPhaseOne(): void {
     this.currentStage = 'dual phase one';
-    this.iterate.bounds.boxForPhaseOne();
-    this.iterate.restAtRightBounds();
+    this.iterate.boxBounds();
   }
 
   private enterPrimal(): void {

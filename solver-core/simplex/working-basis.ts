@@ -3,7 +3,14 @@
  * (see factorization/basis-factorization.ts); a refactorization reorders them.
  */
 import { VariableStatus, type Basis } from '../linear-program/basis';
-import type { ReadonlyFloat64Array, ReadonlyInt32Array, ReadonlyUint8Array } from '../numerics/typed-array-views';
+import type {
+  ReadonlyFloat64Array,
+  ReadonlyInt32Array,
+  ReadonlyUint8Array,
+} from '../numerics/typed-array-views';
+
+/** Nonbasic with equal bounds: never a candidate for anything. Known inside the simplex only; snapshots say atLower. */
+export const nonbasicFixed = 4;
 
 export class WorkingBasis {
   private readonly basic: Int32Array;
@@ -22,7 +29,7 @@ export class WorkingBasis {
     return this.basic;
   }
 
-  /** Length n + m: values of VariableStatus. */
+  /** Length n + m: values of VariableStatus, or nonbasicFixed. */
   get status(): ReadonlyUint8Array {
     return this.statuses;
   }
@@ -50,10 +57,10 @@ export class WorkingBasis {
   }
 
   snapshot(): Basis {
-    return {
-      columnStatus: this.statuses.slice(0, this.columnCount),
-      rowStatus: this.statuses.slice(this.columnCount),
-    };
+    const statuses = this.statuses.map((status) =>
+      status === nonbasicFixed ? VariableStatus.atLower : status,
+    );
+    return { columnStatus: statuses.slice(0, this.columnCount), rowStatus: statuses.slice(this.columnCount) };
   }
 }
 
@@ -64,6 +71,7 @@ export function nonbasicStatus(
   upper: ReadonlyFloat64Array,
   prefersUpper: boolean,
 ): number {
+  if (lower[variable] === upper[variable]) return nonbasicFixed;
   const hasLower = lower[variable] > -Infinity;
   const hasUpper = upper[variable] < Infinity;
   if (hasLower && (!prefersUpper || !hasUpper)) return VariableStatus.atLower;

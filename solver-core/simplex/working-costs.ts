@@ -45,7 +45,8 @@ export class WorkingCosts {
       const hasUpper = form.upper[k] < Infinity;
       const spread = 1 + random.next();
       if (form.lower[k] === form.upper[k] || (!hasLower && !hasUpper)) continue;
-      const amount = k < form.columnCount ? (1 + Math.abs(form.cost[k])) * size * spread : size * 1e-3 * spread;
+      const amount =
+        k < form.columnCount ? (1 + Math.abs(form.cost[k])) * size * spread : size * 1e-3 * spread;
       const isUpward = hasLower && hasUpper ? form.cost[k] >= 0 : hasLower;
       inUse[k] += isUpward ? amount : -amount;
     }

@@ -5,7 +5,12 @@ import type { ReadonlyFloat64Array } from '../numerics/typed-array-views';
 import type { SparseMatrix } from './sparse-matrix';
 
 /** result += factor × A x; result has m, x has n entries. */
-export function addProduct(matrix: SparseMatrix, x: ReadonlyFloat64Array, factor: number, result: Float64Array): void {
+export function addProduct(
+  matrix: SparseMatrix,
+  x: ReadonlyFloat64Array,
+  factor: number,
+  result: Float64Array,
+): void {
   const { columnCount, columnStart, rowIndex, value } = matrix;
   for (let column = 0; column < columnCount; column++) {
     const scale = factor * x[column];

@@ -21,7 +21,8 @@ export class TripletBuilder {
     const byRow = this.orderByRow(rowCount);
     const columnStart = new Int32Array(columnCount + 1);
     for (const column of columns) {
-      if (column < 0 || column >= columnCount) throw new BrokenInvariantError(`column ${column} is outside the matrix`);
+      if (column < 0 || column >= columnCount)
+        throw new BrokenInvariantError(`column ${column} is outside the matrix`);
       columnStart[column + 1]++;
     }
     for (let column = 0; column < columnCount; column++) columnStart[column + 1] += columnStart[column];
