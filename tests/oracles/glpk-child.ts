@@ -11,7 +11,7 @@ async function main(): Promise<void> {
   const problems = JSON.parse(readFileSync(0, 'utf8')) as readonly LP[];
   const glpk = await loadGlpk();
   const answers = problems.map((problem): GlpkAnswer => {
-    const { status, z } = glpk.solve(problem, { msglev: glpk.GLP_MSG_OFF, presol: false }).result;
+    const { status, z } = glpk.solve(problem, { msglev: glpk.GLP_MSG_OFF, presol: false, tmlim: 1 }).result;
     switch (status) {
       case glpk.GLP_OPT:
         return { status: 'optimal', objective: z };

@@ -30,6 +30,7 @@ export function solveWithGlpk(problems: readonly LinearProgram[]): readonly Glpk
     input: JSON.stringify(problems.map(toGlpkModel)),
     encoding: 'utf8',
     maxBuffer: 1 << 28,
+    timeout: 60_000,
   });
   if (child.status !== 0) {
     throw new Error(`glpk.js failed: ${child.stderr}`);

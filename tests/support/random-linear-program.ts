@@ -4,6 +4,7 @@
  * All numbers are binary fractions of few digits, so that the sums around which right sides are laid are exact and
  * the exact oracle means the same problem as everyone else. The kind `decimal` alone has tenths, whose sums are
  * rounded: there an equation too many can be impossible by the last bit, which only an exact oracle would see.
+ * In `ill-scaled` every row and column has a unit of its own, from 2^−12 to 2^12 times the plain one.
  */
 import type { LinearProgram } from '../../solver-core/linear-program/linear-program';
 import { LinearProgramBuilder } from '../../solver-core/linear-program/linear-program-builder';
@@ -23,7 +24,8 @@ export const randomKinds = [
   'decimal',
 ] as const;
 
-export type RandomKind = (typeof randomKinds)[number];
+/** `wild`, apart from the others: entries of sizes from 2^−16 to 2^16 without rhyme, which no scaling can mend. */
+export type RandomKind = (typeof randomKinds)[number] | 'wild';
 
 /**
  * A problem of up to 12 rows and 14 columns with coefficients of few digits. `infeasible` and `unbounded` only lean
@@ -38,44 +40,44 @@ export function randomLinearProgram(seed: number, kind: RandomKind): LinearProgr
   builder.objectiveConstant = random.pick([0, 0, 12.5]);
   const parts = kind === 'decimal' ? 10 : 8;
   const fraction = (): number => random.nextInteger(-9 * parts, 9 * parts) / parts;
+  const unit = (): number => (kind === 'ill-scaled' ? 2 ** random.nextInteger(-12, 12) : 1);
   const coefficient = (): number => {
-    const value =
-      kind === 'degenerate'
-        ? random.pick([-1, 1, 1, 2])
-        : random.pick([fraction(), random.nextInteger(1, 9)]);
-    return kind === 'ill-scaled' ? value * 2 ** random.nextInteger(-16, 16) : value;
+    if (kind === 'degenerate') return random.pick([-1, 1, 1, 2]);
+    const value = random.pick([fraction(), random.nextInteger(1, 9)]);
+    return kind === 'wild' ? value * 2 ** random.nextInteger(-16, 16) : value;
   };
 
   // Right sides are laid around a point, so that most kinds are feasible.
   const point: number[] = [];
+  const columnUnits: number[] = [];
   for (let column = 0; column < columnCount; column++) {
     const { lower, upper } = randomBounds(random, kind);
     const least = Math.max(lower, -10);
     const greatest = Math.max(least, Math.min(upper, least + 10));
-    point.push(random.nextInteger(Math.ceil(least), Math.max(Math.ceil(least), Math.floor(greatest))));
-    if (point[column] > upper) point[column] = upper;
+    const place = random.nextInteger(Math.ceil(least), Math.max(Math.ceil(least), Math.floor(greatest)));
     const cost =
       kind === 'degenerate'
         ? random.nextInteger(-2, 2)
         : random.pick([0, fraction(), random.nextInteger(-9, 9)]);
-    builder.addColumn({
-      cost: kind === 'ill-scaled' ? cost * 2 ** random.nextInteger(-10, 10) : cost,
-      lower,
-      upper,
-    });
+    const columnUnit = unit();
+    columnUnits.push(columnUnit);
+    point.push(Math.min(place, upper) / columnUnit);
+    builder.addColumn({ cost: cost * columnUnit, lower: lower / columnUnit, upper: upper / columnUnit });
   }
   for (let row = 0; row < rowCount; row++) {
     let activity = 0;
     const entries: [number, number][] = [];
+    const rowUnit = unit();
     for (let column = 0; column < columnCount; column++) {
       if (random.next() >= density) continue;
-      const value = coefficient();
+      const value = coefficient() * columnUnits[column] * rowUnit;
       entries.push([column, value]);
       activity += value * point[column];
     }
     const slack = kind === 'degenerate' ? 0 : random.pick([0, random.nextInteger(0, 20)]);
     const shift = kind === 'infeasible' ? random.pick([0, -random.nextInteger(1, 60)]) : 0;
-    const place = builder.addRow(randomRow(random, kind, activity, slack, shift));
+    const { lower, upper } = randomRow(random, kind, activity / rowUnit, slack, shift);
+    const place = builder.addRow({ lower: lower * rowUnit, upper: upper * rowUnit });
     entries.forEach(([column, value]) => builder.addEntry(place, column, value));
   }
   return builder.build();
@@ -87,7 +89,7 @@ function randomBounds(random: SeededRandom, kind: RandomKind): { lower: number; 
   const above = { lower: random.pick([0, 0, low]), upper: Infinity };
   switch (kind) {
     case 'boxed':
-    case 'ill-scaled':
+    case 'wild':
       return { lower: low, upper: high };
     case 'free':
       return random.pick([{ lower: -Infinity, upper: Infinity }, above]);
@@ -105,6 +107,7 @@ function randomBounds(random: SeededRandom, kind: RandomKind): { lower: number; 
         { lower: 0, upper: Infinity },
         { lower: 0, upper: 1 },
       ]);
+    case 'ill-scaled':
     case 'mixed':
       return random.pick([
         above,
@@ -135,6 +138,7 @@ function randomRow(
       return random.pick([ranged, ranged, atMost]);
     case 'equality':
       return random.pick([equation, equation, atMost]);
+    case 'ill-scaled':
     case 'mixed':
       return random.pick([atMost, atLeast, equation, ranged, { lower: -Infinity, upper: Infinity }]);
     case 'unbounded':

@@ -1,48 +1,62 @@
 /**
- * A second judge of a solver's evidence, written for the tests alone: dense arrays, plain sums, no code shared with
- * solver-core/verification. It looks at the conditions in their textbook form and returns what it finds wrong.
+ * A second judge of a solver's evidence, written for the tests alone: plain sums over lists of entries, no code
+ * shared with solver-core/verification. It looks at the conditions in their textbook form and says what it finds
+ * wrong.
  */
 import type { LinearProgram } from '../../solver-core/linear-program/linear-program';
 
 type Vector = ArrayLike<number>;
 
-/** Relative to 1 + the largest number in the sum. Coarser than what the core accepts, since sums here are plain. */
+/** A row or column of A as pairs of place and coefficient. */
+type Line = readonly (readonly [place: number, coefficient: number])[];
+
+/** Relative to the largest number in the sum, 1 at least. Coarser than what the core accepts: sums here are plain. */
 const tolerance = 1e-6;
 
-/** A as rows of dense coefficients. */
-function denseRows(problem: LinearProgram): number[][] {
-  const rows = Array.from({ length: problem.rowCount }, () => new Array<number>(problem.columnCount).fill(0));
-  for (let column = 0; column < problem.columnCount; column++) {
-    for (let k = problem.matrix.columnStart[column]; k < problem.matrix.columnStart[column + 1]; k++) {
-      rows[problem.matrix.rowIndex[k]][column] = problem.matrix.value[k];
+/** What may be left of a sum that is 0 in theory, relative to its largest term. */
+const noise = 1e-8;
+
+function linesOf(problem: LinearProgram): { rows: readonly Line[]; columns: readonly Line[] } {
+  const { columnStart, rowIndex, value } = problem.matrix;
+  const rows = Array.from({ length: problem.rowCount }, (): [number, number][] => []);
+  const columns = Array.from({ length: problem.columnCount }, (): [number, number][] => []);
+  columns.forEach((column, j) => {
+    for (let k = columnStart[j]; k < columnStart[j + 1]; k++) {
+      column.push([rowIndex[k], value[k]]);
+      rows[rowIndex[k]].push([j, value[k]]);
     }
-  }
-  return rows;
+  });
+  return { rows, columns };
 }
 
-function dot(a: Vector, b: Vector): { sum: number; size: number } {
+function dot(line: Line, vector: Vector): { sum: number; largest: number } {
   let sum = 0;
-  let size = 1;
-  for (let k = 0; k < a.length; k++) {
-    const term = a[k] * b[k];
+  let largest = 0;
+  for (const [place, coefficient] of line) {
+    const term = coefficient * vector[place];
     sum += term;
-    size = Math.max(size, Math.abs(term));
+    largest = Math.max(largest, Math.abs(term));
   }
-  return { sum, size };
+  return { sum, largest };
+}
+
+function costLine(problem: LinearProgram): Line {
+  return Array.from(problem.cost, (cost, j) => [j, cost] as const);
 }
 
 /** What is wrong with x as a feasible point. */
 export function findPrimalFaults(problem: LinearProgram, x: Vector): string[] {
   const faults: string[] = [];
-  denseRows(problem).forEach((row, i) => {
-    const { sum, size } = dot(row, x);
-    if (!(sum >= problem.rowLower[i] - tolerance * size && sum <= problem.rowUpper[i] + tolerance * size)) {
+  linesOf(problem).rows.forEach((row, i) => {
+    const { sum, largest } = dot(row, x);
+    const slack = tolerance * Math.max(1, largest);
+    if (!(sum >= problem.rowLower[i] - slack && sum <= problem.rowUpper[i] + slack)) {
       faults.push(`row ${i}: ${sum} not in [${problem.rowLower[i]}, ${problem.rowUpper[i]}]`);
     }
   });
   for (let j = 0; j < problem.columnCount; j++) {
-    const size = tolerance * (1 + Math.abs(x[j]));
-    if (!(x[j] >= problem.columnLower[j] - size && x[j] <= problem.columnUpper[j] + size)) {
+    const slack = tolerance * Math.max(1, Math.abs(x[j]));
+    if (!(x[j] >= problem.columnLower[j] - slack && x[j] <= problem.columnUpper[j] + slack)) {
       faults.push(`column ${j}: ${x[j]} not in [${problem.columnLower[j]}, ${problem.columnUpper[j]}]`);
     }
   }
@@ -56,51 +70,49 @@ export function findOptimalityFaults(
 ): string[] {
   const faults = findPrimalFaults(problem, claim.x);
   const sense = problem.sense === 'minimise' ? 1 : -1;
-  const rows = denseRows(problem);
-  const primal = dot(Array.from(problem.cost), claim.x).sum + problem.objectiveConstant;
+  const { rows, columns } = linesOf(problem);
+  const primal = dot(costLine(problem), claim.x).sum + problem.objectiveConstant;
   let dual = problem.objectiveConstant;
-  let largest = 1 + Math.abs(primal);
+  let largest = Math.max(1, Math.abs(primal));
 
   const price = (
     what: string,
     multiplier: number,
-    size: number,
+    scale: number,
     lower: number,
     upper: number,
     at: number,
   ): void => {
     const bound = sense * multiplier > 0 ? lower : upper;
-    if (Number.isFinite(bound)) {
-      dual += multiplier * bound;
-      largest = Math.max(largest, Math.abs(multiplier * bound));
-    } else {
-      dual += multiplier * at;
-      if (!(Math.abs(multiplier) <= tolerance * size)) {
-        faults.push(`${what}: multiplier ${multiplier} on a bound that is not there`);
-      }
+    const isThere = Number.isFinite(bound);
+    if (!isThere && !(Math.abs(multiplier) <= tolerance * scale)) {
+      faults.push(`${what}: multiplier ${multiplier} on a bound that is not there`);
     }
+    const worth = multiplier * (isThere ? bound : at);
+    dual += worth;
+    largest = Math.max(largest, Math.abs(worth));
   };
   rows.forEach((row, i) => {
+    const y = claim.rowDuals[i];
     price(
       `row ${i}`,
-      claim.rowDuals[i],
-      1 + Math.abs(claim.rowDuals[i]),
+      y,
+      Math.max(1, Math.abs(y)),
       problem.rowLower[i],
       problem.rowUpper[i],
       dot(row, claim.x).sum,
     );
   });
-  for (let j = 0; j < problem.columnCount; j++) {
-    const column = rows.map((row) => row[j]);
-    const { sum, size } = dot(column, claim.rowDuals);
+  columns.forEach((column, j) => {
+    const { sum, largest: largestTerm } = dot(column, claim.rowDuals);
     const reduced = problem.cost[j] - sum;
-    const scale = Math.max(size, 1 + Math.abs(problem.cost[j]));
+    const scale = Math.max(1, largestTerm, Math.abs(problem.cost[j]));
     if (!(Math.abs(reduced - claim.reducedCosts[j]) <= tolerance * scale)) {
       faults.push(`column ${j}: reduced cost ${claim.reducedCosts[j]}, by the row duals ${reduced}`);
     }
     price(`column ${j}`, reduced, scale, problem.columnLower[j], problem.columnUpper[j], claim.x[j]);
-  }
-  if (!(Math.abs(primal - claim.objective) <= tolerance * (1 + Math.abs(primal)))) {
+  });
+  if (!(Math.abs(primal - claim.objective) <= tolerance * Math.max(1, Math.abs(primal)))) {
     faults.push(`objective ${claim.objective}, by the point ${primal}`);
   }
   if (!(Math.abs(primal - dual) <= tolerance * largest)) {
@@ -111,9 +123,7 @@ export function findOptimalityFaults(
 
 /** What is wrong with y as a proof that there is no feasible point. */
 export function findFarkasFaults(problem: LinearProgram, y: Vector): string[] {
-  const faults: string[] = [];
-  const rows = denseRows(problem);
-  // Row side: y · r can be no less than `least`. Column side: (Aᵀ y) · x can be no more than `greatest`.
+  // Rows: y · r can be no less than `least`. Columns: (Aᵀ y) · x can be no more than `greatest`.
   let least = 0;
   let greatest = 0;
   for (let i = 0; i < problem.rowCount; i++) {
@@ -121,41 +131,37 @@ export function findFarkasFaults(problem: LinearProgram, y: Vector): string[] {
       least += y[i] * (y[i] > 0 ? problem.rowLower[i] : problem.rowUpper[i]);
     }
   }
-  for (let j = 0; j < problem.columnCount; j++) {
-    const { sum, size } = dot(
-      rows.map((row) => row[j]),
-      y,
-    );
+  linesOf(problem).columns.forEach((column, j) => {
+    const { sum, largest } = dot(column, y);
     const bound = sum > 0 ? problem.columnUpper[j] : problem.columnLower[j];
-    const largestTerm = rows.reduce((largest, row, i) => Math.max(largest, Math.abs(row[j] * y[i])), 0);
-    if (sum === 0 || (!Number.isFinite(bound) && Math.abs(sum) <= 1e-8 * largestTerm)) continue;
-    greatest += sum * bound;
-    if (Number.isNaN(size)) faults.push(`column ${j}: not a number`);
-  }
-  if (!(greatest < least)) {
-    faults.push(`columns reach ${greatest}, rows need at least ${least}`);
-  }
-  return faults;
+    if (sum !== 0 && (Number.isFinite(bound) || !(Math.abs(sum) <= noise * largest))) {
+      greatest += sum * bound;
+    }
+  });
+  return greatest < least ? [] : [`columns reach ${greatest}, rows need at least ${least}`];
 }
 
 /** What is wrong with x and v as a proof that the objective improves without end. */
 export function findUnboundedFaults(problem: LinearProgram, x: Vector, v: Vector): string[] {
   const faults = findPrimalFaults(problem, x);
-  const largest = Math.max(...Array.from(v, Math.abs), 0);
   const watch = (what: string, rate: number, size: number, lower: number, upper: number): void => {
-    const slack = 1e-8 * size;
+    const slack = noise * size;
     if (!((rate >= -slack || lower === -Infinity) && (rate <= slack || upper === Infinity))) {
       faults.push(`${what} moves toward its bound at ${rate}`);
     }
   };
+  let largest = 0;
+  for (let j = 0; j < problem.columnCount; j++) {
+    largest = Math.max(largest, Math.abs(v[j]));
+  }
   for (let j = 0; j < problem.columnCount; j++) {
     watch(`column ${j}`, v[j], largest, problem.columnLower[j], problem.columnUpper[j]);
   }
-  denseRows(problem).forEach((row, i) => {
-    const size = row.reduce((most, a, j) => Math.max(most, Math.abs(a * v[j])), 0);
-    watch(`row ${i}`, dot(row, v).sum, size, problem.rowLower[i], problem.rowUpper[i]);
+  linesOf(problem).rows.forEach((row, i) => {
+    const { sum, largest: largestTerm } = dot(row, v);
+    watch(`row ${i}`, sum, largestTerm, problem.rowLower[i], problem.rowUpper[i]);
   });
-  const { sum } = dot(Array.from(problem.cost), v);
+  const { sum } = dot(costLine(problem), v);
   const gain = problem.sense === 'minimise' ? -sum : sum;
   if (!(gain > 0)) {
     faults.push(`the objective does not improve: ${gain}`);
