@@ -38,11 +38,11 @@ export function sentenceOfNotice(notice: ResultNotice): string {
     case 'kept-cell':
       return `${at} no longer holds what was last written, so it was left as it is; the new value for ${notice.facts.name} there is ${amountText(notice.facts.value)}. Clear the cell to have it filled again.`;
     case 'results-moved':
-      return `${notice.facts.name} moved from ${notice.facts.from} to ${notice.facts.to}, because its block changed its size or place.`;
+      return `${listText(notice.facts.names)} now stand in ${listText(notice.facts.ranges)}, because their block changed its size or place.`;
     case 'results-left':
-      return `${notice.facts.range} was left as it is, because not all of it is known to be an earlier result of ${notice.facts.name}. Delete it if you no longer need it.`;
+      return `Not every cell of ${listText(notice.facts.ranges)} is known to be an earlier result, so what is there was left as it is. Delete it if you no longer need it.`;
     case 'results-on-own-sheet':
-      return `${notice.facts.name} and its neighbours stand on the sheet ${quoted(notice.facts.sheet)}, because no free columns were found beside the block.`;
+      return `${listText(notice.facts.names)} stand on the sheet ${quoted(notice.facts.sheet)}, one row for each, because there is no room for them beside their block.`;
     case 'not-recalculated':
       return `${at} depends on the plan but could not be recalculated here (${notice.facts.reason}). It shows its value once the workbook is opened in a spreadsheet program.`;
     case 'workbook-disagrees': {

@@ -6,26 +6,27 @@
  * was last written there is theirs and is kept, and reported.
  */
 import { formatCellAddress, type CellAddress } from '../sheet/cell-address';
-import { absoluteRangeText, containsCell, formatCellRange, type CellRange } from '../sheet/cell-range';
+import { absoluteRangeText, formatCellRange, type CellRange } from '../sheet/cell-range';
 import type { DefinedName } from '../sheet/defined-name';
 import { findSheet, storedValue, type WorkbookSnapshot } from '../sheet/sheet-snapshot';
 import { recalculate } from '../calculation/recalculate';
 import type { SheetModel } from '../model-from-sheet/sheet-model';
-import { compareWithWorkbook } from './workbook-agreement';
+import { placeResults } from './place-results';
 import {
   holdsOurHeading,
-  placeResults,
   type AbandonedColumn,
   type PlacedColumn,
   type PlacedTable,
   type Placement,
-} from './place-results';
+} from './placement';
 import type { PlanSolution } from './plan-solution';
-import { headingCellOf, lineCell, LineContents, lineLengthOf, rangeOfCell } from './result-lines';
+import { headingCellOf, lineCell, LineContents, lineLengthOf } from './result-lines';
 import { resultNotice, type ResultNotice } from './result-notice';
 import { headingText, type ResultTexts } from './result-texts';
-import { resultBlocksOf } from './solution-columns';
-import type { ColumnWidthWrite, NameWrite, ValueWrite, WorkbookWrite, WritePlan } from './write-plan';
+import { widthWrites } from './result-widths';
+import { resultBlocksOf, type ResultBlock } from './solution-columns';
+import { compareWithWorkbook } from './workbook-agreement';
+import type { NameWrite, ValueWrite, WorkbookWrite, WritePlan } from './write-plan';
 import {
   cellsStillOurs,
   planRecordKey,
@@ -68,11 +69,6 @@ export interface ResultWrites {
   readonly workbookAgrees: boolean;
   readonly notices: readonly ResultNotice[];
 }
-
-/** Widths are set so that a number of some millions and a heading's words fit; a gloss may take two lines. */
-const narrowestColumn = 12;
-const widestColumn = 20;
-const widestLabelColumn = 42;
 
 export function planResultWrites(request: ResultWriteRequest): ResultWrites {
   const { workbook, model, solution, texts } = request;
@@ -289,75 +285,34 @@ function clearingWrites(
   return { writes, left };
 }
 
+/** One notice a block, since its columns move together. */
 function movingNotices(placement: Placement, left: readonly AbandonedColumn[]): ResultNotice[] {
   const notices: ResultNotice[] = [];
-  for (const { name, range } of placement.abandoned) {
-    const placed = placement.columns.find(({ column }) => column.name === name);
-    const isLeft = left.some((column) => column.name === name);
-    if (placed !== undefined && !isLeft && formatCellRange(placed.range) !== formatCellRange(range)) {
-      const facts = { name, from: formatCellRange(range), to: formatCellRange(placed.range) };
-      notices.push(resultNotice('results-moved', lineCell(placed.range, 0), facts));
+  const isOf = (block: ResultBlock) => (column: { readonly block: ResultBlock }) => column.block === block;
+  for (const block of new Set(placement.abandoned.map((column) => column.block))) {
+    const names = placement.abandoned.filter(isOf(block)).map(({ name }) => name);
+    const placed = placement.columns.filter(({ column }) => names.includes(column.name));
+    const leftOfBlock = left.filter(isOf(block));
+    const cell = lineCell((leftOfBlock[0] ?? placed[0]).range, 0);
+    if (leftOfBlock.length > 0) {
+      const ranges = leftOfBlock.map(({ range }) => formatCellRange(range));
+      notices.push(
+        resultNotice('results-left', cell, { names: leftOfBlock.map(({ name }) => name), ranges }),
+      );
+    } else {
+      notices.push(
+        resultNotice('results-moved', cell, {
+          names,
+          ranges: placed.map(({ range }) => formatCellRange(range)),
+        }),
+      );
     }
   }
-  for (const { name, range } of left) {
-    notices.push(resultNotice('results-left', lineCell(range, 0), { name, range: formatCellRange(range) }));
-  }
-  for (const { block, sheet, isNew } of placement.tables) {
-    if (isNew) {
-      const name = block.columns[0].name;
-      notices.push(resultNotice('results-on-own-sheet', null, { name, sheet }));
-    }
+  for (const { block, sheet } of placement.tables.filter(({ isNew }) => isNew)) {
+    const names = block.columns.map(({ name }) => name);
+    notices.push(resultNotice('results-on-own-sheet', null, { names, sheet }));
   }
   return notices;
-}
-
-/**
- * Widths for new upright columns, as long as nothing of the planner's stands in the same sheet column: its width is
- * theirs then. Lying results stand in the block's own columns, whose widths are never touched.
- */
-function widthWrites(
-  workbook: WorkbookSnapshot,
-  placement: Placement,
-  texts: ResultTexts,
-): ColumnWidthWrite[] {
-  const widths = new Map<string, ColumnWidthWrite>();
-  const widen = (sheet: string, column: number, width: number): void => {
-    const key = `${column}!${sheet}`;
-    widths.set(key, {
-      kind: 'columnWidth',
-      sheet,
-      column,
-      width: Math.max(width, widths.get(key)?.width ?? 0),
-    });
-  };
-  const clamped = (length: number, widest: number): number =>
-    Math.min(widest, Math.max(narrowestColumn, length + 2));
-  for (const placed of placement.columns.filter(({ isNew, isLying }) => isNew && !isLying)) {
-    const { title, gloss } = texts.headings[placed.column.role];
-    widen(placed.range.sheet, placed.range.left, clamped(Math.max(title.length, gloss.length), widestColumn));
-  }
-  for (const table of placement.tables.filter(({ isNew }) => isNew)) {
-    const longest = table.block.lines.reduce((length, { label }) => Math.max(length, label.length), 0);
-    widen(table.sheet, table.labelColumn, clamped(longest, widestLabelColumn));
-    widen(table.sheet, table.labelColumn + 1, clamped(0, widestColumn));
-  }
-  const ownRanges = [
-    ...placement.columns.map(({ range, isLying }) => ({ range, isLying })),
-    ...placement.abandoned,
-  ].flatMap((line) => {
-    const heading = headingCellOf(line.range, line.isLying);
-    return heading === undefined ? [line.range] : [line.range, rangeOfCell(heading)];
-  });
-  for (const sheet of workbook.sheets) {
-    sheet.forEachCell((row, column) => {
-      const key = `${column}!${sheet.name}`;
-      const address = { sheet: sheet.name, row, column };
-      if (widths.has(key) && !ownRanges.some((range) => containsCell(range, address))) {
-        widths.delete(key);
-      }
-    });
-  }
-  return [...widths.values()];
 }
 
 /** The workbook as its names will be, so that formulas that use a result name follow it. */

@@ -8,12 +8,12 @@ import type { CellAddress } from '../sheet/cell-address';
 export interface ResultNoticeFacts {
   /** A result cell holds something else than what was last written: it is the planner's and was left alone. */
   'kept-cell': { readonly name: string; readonly value: number };
-  /** The block grew, shrank or lost its place: its results stand elsewhere now. */
-  'results-moved': { readonly name: string; readonly from: string; readonly to: string };
-  /** Nothing tells which cells of this column are ours: they were left alone, and results placed anew. */
-  'results-left': { readonly name: string; readonly range: string };
+  /** The block grew, shrank or lost its place: these columns stand elsewhere now. */
+  'results-moved': { readonly names: readonly string[]; readonly ranges: readonly string[] };
+  /** Not all cells at the old place are known to be ours: those were left alone, and results placed anew. */
+  'results-left': { readonly names: readonly string[]; readonly ranges: readonly string[] };
   /** No free columns near the block (or a grid): its results stand in a table on a sheet of their own. */
-  'results-on-own-sheet': { readonly name: string; readonly sheet: string };
+  'results-on-own-sheet': { readonly names: readonly string[]; readonly sheet: string };
   /** A formula depends on the plan and could not be recalculated: it has no stored value until the file is opened. */
   'not-recalculated': { readonly reason: string };
   /** The workbook's own arithmetic gives another value than the model. */

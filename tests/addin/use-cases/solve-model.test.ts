@@ -172,7 +172,7 @@ describe('which plan', () => {
     const book =
       reason === 'none'
         ? MemoryWorkbook.of({ sheets: { Plan: { A1: 1 } } })
-        : workbook(names as Record<string, string>);
+        : workbook(names);
     expect(await checkModel({ workbook: book, planName, today: 0 })).toMatchObject({
       kind: 'no-such-plan',
       reason,
