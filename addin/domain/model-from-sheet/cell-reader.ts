@@ -144,7 +144,7 @@ export class CellReader {
   }
 }
 
-/** Cells of a workbook, each once. */
+/** A set of cells. */
 class CellSet {
   private readonly bySheet = new Map<string, Set<number>>();
 

@@ -56,11 +56,19 @@ export class LabelFinder {
   }
 
   private candidatesOf(group: LabelGroup): Candidate[] {
-    return group.subjects.map(({ cell, labelCell }) => ({
-      named: labelCell === undefined ? undefined : this.textsOf(labelCell.sheet).labelIn(labelCell),
-      row: this.textsOf(cell.sheet).leftOf(cell),
-      column: this.textsOf(cell.sheet).above(cell),
-    }));
+    return group.subjects.map(({ cell, labelCell }) => {
+      const texts = this.textsOf(cell.sheet);
+      return {
+        named: labelCell === undefined ? undefined : this.textsOf(labelCell.sheet).labelIn(labelCell),
+        // Looked for only where they are needed: most plans are told apart by one direction.
+        get row() {
+          return texts.leftOf(cell);
+        },
+        get column() {
+          return texts.above(cell);
+        },
+      };
+    });
   }
 
   private textsOf(sheet: string): SheetTexts {
@@ -96,7 +104,8 @@ function labelsWithinGroup(group: LabelGroup, candidates: readonly Candidate[]):
   const found = candidates.filter((candidate) => candidate.named === undefined);
   const distinctOf = (text: (candidate: Candidate) => string | undefined): number =>
     new Set(found.map(text)).size;
-  const isJoined = distinctOf(first) < found.length && distinctOf(bothTexts) > distinctOf(first);
+  const distinctFirst = distinctOf(first);
+  const isJoined = distinctFirst < found.length && distinctOf(bothTexts) > distinctFirst;
   return candidates.map(
     (candidate, i) =>
       candidate.named ??

@@ -8,7 +8,7 @@ import { findSheet, type WorkbookSnapshot } from '../sheet/sheet-snapshot';
 import { cellsOfArea, hullOf, type NamedArea } from './model-declaration';
 import { statementIssue, type ModelIssue } from './model-issue';
 import type { DecisionBlock } from './sheet-model';
-import { looksLikeNumber } from './statement-words';
+import { isBlankText, looksLikeNumber } from './statement-words';
 
 export interface DecisionReading {
   /** All blocks' cells, block by block, each row by row; a cell of two blocks twice. */
@@ -67,7 +67,7 @@ function readDecisionCell(
     }
     return value;
   }
-  if (typeof value === 'string') {
+  if (typeof value === 'string' && !isBlankText(value)) {
     const code = looksLikeNumber(value) ? 'text-looks-like-number' : 'decision-holds-text';
     issues.push(statementIssue(code, cell, { name, text: value }));
   } else if (typeof value === 'boolean') {

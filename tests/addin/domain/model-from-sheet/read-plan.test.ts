@@ -148,6 +148,12 @@ describe('a sound plan', () => {
     ]);
   });
 
+  it('AD-10 takes a decision cell that holds only blanks for a blank one', () => {
+    const { issues, model } = readTiles({ cells: { B3: ' ' } });
+    expect(issues).toEqual([]);
+    expect(model!.decisions[1].before).toBeNull();
+  });
+
   it('AD-53 follows formulas over other sheets, and takes stored values for what no decision changes', () => {
     const model = tileModel({
       cells: {
@@ -171,6 +177,69 @@ describe('a sound plan', () => {
       'Wall gloss': 8,
       Border: 12,
     });
+  });
+});
+
+describe('formulas of a plan', () => {
+  it('AD-53 may be array formulas that fill the left sides, and may use tables', () => {
+    const model = tileModel({
+      cells: {
+        A1: [['Tile', 'Make', 'Margin', 'Least', 'Most', 'Press', 'Kiln']],
+        B7: { formula: 'MMULT(TRANSPOSE(Tiles[[Press]:[Kiln]]),Tiles[Make])', value: 5, fills: 'B7:B8' },
+        B8: 10,
+        B11: '=SUMPRODUCT(Tiles[Make],Tiles[Margin])',
+      },
+      tables: [{ name: 'Tiles', sheet: 'Plan', ref: 'A1:G4' }],
+      names: { 'Week.Decision': 'Tiles[Make]', 'Week.Lower': 'Tiles[Least]', 'Week.Upper': 'Tiles[Most]' },
+    });
+    expect(rowsOf(model)).toEqual(tileRows);
+    expect(termsOf(model.objective, model)).toEqual({ 'Floor matt': 6.5, 'Wall gloss': 8, Border: 12 });
+    expect(model.decisions.map(({ lower, upper }) => [lower, upper])).toEqual([
+      [0, 100],
+      [0, Infinity],
+      [5, 40],
+    ]);
+  });
+
+  it('AD-53 are not touched by faults elsewhere on the sheet', () => {
+    const { issues } = readTiles({
+      cells: { N1: '=N2', N2: '=N1', N3: '=KILNTIME(B2)', N4: '=ROUND(B2,0)', N5: '=1/0', N6: '=B2*B3' },
+    });
+    expect(issues).toEqual([]);
+  });
+
+  it('AD-27 a coefficient that a decision reaches with the factor 0 is refused all the same', () => {
+    const { issues } = readTiles({
+      cells: { K1: [['=0*B2+3', 1, 1, '<=', 5]] },
+      names: { 'Week.Constraint': 'Plan!$K$1:$O$1' },
+    });
+    expect(issueTexts(issues)).toEqual(['coefficient-depends at Plan!K1']);
+  });
+
+  it('AD-54 a running stock of 600 weeks stays linear in size', () => {
+    const weeks = 600;
+    const lines = Array.from({ length: weeks }, (_, week) => [
+      `Week ${week + 1}`,
+      null,
+      5,
+      week === 0 ? '=20+L2-M2' : `=N${week + 1}+L${week + 2}-M${week + 2}`,
+      '>=',
+      0,
+    ]);
+    const { size, model } = readTiles({
+      cells: { K1: [['Week', 'Make', 'Sold', 'Stock']], K2: lines, B11: `=SUM(L2:L${weeks + 1})` },
+      names: {
+        'Week.Decision': `Plan!$L$2:$L$${weeks + 1}`,
+        'Week.Constraint': `Plan!$N$2:$P$${weeks + 1}`,
+        'Week.Lower': null,
+        'Week.Upper': null,
+      },
+    });
+    // Written out in decisions the rows have 600 · 601 / 2 = 180,300 entries.
+    expect(size!.nonzeros).toBeLessThan(20 * weeks);
+    expect(size!.definingRows).toBeGreaterThan(0);
+    expect(size).toMatchObject({ decisions: weeks, constraints: weeks });
+    expect(model!.constraintSets[0].rows[599].label).toBe('Week 600');
   });
 });
 
