@@ -42,13 +42,12 @@ import {
   errorSignal,
   EvaluationRefusal,
 } from './evaluation-refusal';
+import { refuseTooLarge } from './array-size';
 import { worksheetFunctions } from './functions/worksheet-functions';
 import type { AmountSum, NumberDomain } from './number-domain';
 import { applyOperator, applyUnary, type ScalarOperator } from './operators';
 import type { FunctionContext, WorksheetFunction } from './worksheet-function';
 
-/** More cells than this are not held in one array. */
-export const maximumArrayCells = 4_000_000;
 /** Names that lead to names, and lambdas that call lambdas. */
 const maximumScopeDepth = 200;
 
@@ -793,13 +792,6 @@ export function isRefusal(error: unknown): boolean {
   return (
     error instanceof EvaluationRefusal || error instanceof DependentValueRefusal || error === cellBlocked
   );
-}
-
-/** @throws EvaluationRefusal array-too-large */
-export function refuseTooLarge(cellCount: number): void {
-  if (cellCount > maximumArrayCells) {
-    throw new EvaluationRefusal({ code: 'array-too-large' });
-  }
 }
 
 /** An error value in one element of an array is that element's, not the whole array's. */

@@ -2,38 +2,11 @@
  * Rounding, and arithmetic on single numbers. Nothing here may be given a number that depends on decisions.
  */
 import { toInteger, toNumber } from '../coercions';
+import { roundSize, significantDigits } from '../decimal-rounding';
 import { errorValue, type Scalar } from '../evaluated-value';
 import { finite, power } from '../operators';
 import { generalFunction, scalarFunction, type FunctionTable } from '../worksheet-function';
 import { numbersOf } from './counted-amounts';
-
-/** Digits by which worksheets round: 2.675 is taken as written and not as the nearest binary number below it. */
-const significantDigits = 15;
-
-/** number × 10^places, exact in the decimal digits shown. */
-function shiftPoint(number: number, places: number): number {
-  const [mantissa, exponent] = number.toExponential().split('e');
-  return Number(`${mantissa}e${Number(exponent) + places}`);
-}
-
-/** Rounds the size of a number to so many decimal places, the sign aside. */
-function roundSize(number: number, places: number, round: (size: number) => number): number {
-  if (number === 0 || !Number.isFinite(number)) {
-    return number;
-  }
-  // Beyond what a double tells apart there is nothing to round.
-  const limited = Math.max(-308, Math.min(308, places));
-  const size = Number(Math.abs(number).toPrecision(significantDigits));
-  const shifted = Number(shiftPoint(size, limited).toPrecision(significantDigits));
-  if (!Number.isFinite(shifted)) {
-    return number;
-  }
-  return Math.sign(number) * shiftPoint(round(shifted), -limited);
-}
-
-export function roundHalfAway(number: number, places: number): number {
-  return roundSize(number, places, (size) => Math.floor(size + 0.5));
-}
 
 function byPlaces(round: (size: number) => number, minimum: number) {
   return scalarFunction(minimum, 2, ([value, places]) =>

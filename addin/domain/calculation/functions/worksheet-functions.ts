@@ -3,17 +3,32 @@
  * family's table, and to linearization/affine-functions.ts only if it keeps affine forms affine.
  */
 import type { WorksheetFunction } from '../worksheet-function';
+import { arrays } from './arrays';
 import { conditionalSums } from './conditional-sums';
 import { conditions } from './conditions';
+import { dates } from './dates';
 import { information } from './information';
+import { lambdas } from './lambdas';
 import { lookups } from './lookups';
 import { matrices } from './matrices';
 import { rounding } from './rounding';
 import { statistics } from './statistics';
 import { sums } from './sums';
+import { texts } from './texts';
 
 export const worksheetFunctions: ReadonlyMap<string, WorksheetFunction> = new Map(
-  [sums, conditionalSums, statistics, conditions, information, rounding, lookups, matrices].flatMap(
-    (family) => Object.entries(family),
-  ),
+  [
+    sums,
+    conditionalSums,
+    statistics,
+    conditions,
+    information,
+    rounding,
+    lookups,
+    matrices,
+    arrays,
+    lambdas,
+    texts,
+    dates,
+  ].flatMap((family) => Object.entries(family)),
 );
