@@ -4,12 +4,14 @@
  */
 import { readFileSync } from 'node:fs';
 import path from 'node:path';
+import { TextReader, Uint8ArrayReader, Uint8ArrayWriter, ZipReader, ZipWriter } from '@zip.js/zip.js';
 import { XlsxWorkbook } from '../../../../addin/adapters/xlsx-file/xlsx-workbook';
 import { verifyPatched } from '../../../../addin/adapters/xlsx-file/verify-patched';
 import { columnOfLetters, type CellAddress } from '../../../../addin/domain/sheet/cell-address';
 import { CellError } from '../../../../addin/domain/sheet/cell-value';
 import type { WorkbookWrite, WritePlan } from '../../../../addin/domain/results-to-sheet/write-plan';
 import { WorkbookError } from '../../../../addin/ports/workbook';
+import { makeTileWeek } from '../../../golden/make-tile-week';
 import { checkoutFolder, itNeeds, pathOfNeed } from '../../../support/needs';
 import { buildXlsx, xlsxParts, type XlsxDescription } from '../../../support/xlsx-builder';
 import { buildZip } from '../../../support/zip-builder';
@@ -736,4 +738,25 @@ describe('everything else stays to the byte', () => {
       expect(differences(before, after).changed).toEqual([sheetPart]);
     }
   });
+});
+
+it('the committed week is the one that its script makes', () => {
+  const committed = readFileSync(path.join(checkoutFolder, 'tests', 'golden', 'tile-week.xlsx'));
+  const contents = (bytes: Uint8Array): [string, string][] =>
+    inspectZip(bytes).map(({ name, content }) => [name, content.toString('utf8')]);
+  expect(contents(makeTileWeek())).toEqual(contents(committed));
+});
+
+it('a zip of the large form (zip64), with comments and directories, is read and written', async () => {
+  const writer = new ZipWriter(new Uint8ArrayWriter(), { useWebWorkers: false, zip64: true });
+  await writer.add('xl/', undefined, { directory: true });
+  for (const [name, content] of xlsxParts({ sheets: [{ name: 'Plan', cells: { A1: 1 } }] })) {
+    await writer.add(name, new TextReader(content as string), { comment: `about ${name}` });
+  }
+  const before = await writer.close();
+  const after = await written(before, [value('A1', 2)]);
+  const entries = await new ZipReader(new Uint8ArrayReader(after), { useWebWorkers: false }).getEntries();
+  expect(entries[0].filename).toBe('xl/');
+  expect(entries[0].directory).toBe(true);
+  expect(entries.find(({ filename }) => filename === sheetPart)?.comment).toBe(`about ${sheetPart}`);
 });
