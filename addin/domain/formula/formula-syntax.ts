@@ -82,10 +82,13 @@ export interface ExternalNode {
   readonly text: string;
 }
 
-/** The same cells on several sheets, such as `Jan:Mar!B2`. */
+/** The same cells on several sheets, such as `Jan:Mar!B2`: on all tabs from the first to the last. */
 export interface SheetsNode {
   readonly kind: 'sheets';
   readonly text: string;
+  readonly firstSheet: string;
+  readonly lastSheet: string;
+  readonly reference: CellNode | RangeNode;
 }
 
 export interface ArrayNode {
@@ -186,6 +189,8 @@ export interface ParsedFormula {
 /** The children of a node, in the order written. */
 export function childrenOf(node: FormulaNode): readonly FormulaNode[] {
   switch (node.kind) {
+    case 'sheets':
+      return [node.reference];
     case 'array':
       return node.rows.flat();
     case 'unary':

@@ -2,10 +2,19 @@
  * Formula text to syntax tree. The grammar is @borgar/fx's; this file mends what its trees leave open (prefixes of
  * newer functions, `Sheet!#REF!`, a blank before a bracket) and maps them to our own types.
  */
-import { parse, parseA1Ref, parseStructRef, tokenize, type AstExpression, type Token } from '@borgar/fx/xlsx';
+import {
+  parse,
+  parseA1Ref,
+  parseStructRef,
+  tokenize,
+  type AstExpression,
+  type RangeA1,
+  type Token,
+} from '@borgar/fx/xlsx';
 import { CellError } from '../sheet/cell-value';
 import {
   childrenOf,
+  type CellNode,
   type FormulaNode,
   type FormulaSyntaxIssue,
   type NameNode,
@@ -209,6 +218,10 @@ function convertReference(text: string, kind: string, place: FormulaPlace): Form
   }
   const parsed = parseA1Ref(text);
   if (parsed === undefined) {
+    // A parameter of LAMBDA may be called `r` or `c`, which no defined name may.
+    if (kind === 'name' && !text.includes('!')) {
+      return { kind: 'name', sheet: null, name: text };
+    }
     throw new NotUnderstood();
   }
   if (parsed.workbookName !== undefined && parsed.workbookName !== '') {
@@ -218,10 +231,20 @@ function convertReference(text: string, kind: string, place: FormulaPlace): Form
   if ('name' in parsed) {
     return { kind: 'name', sheet, name: parsed.name };
   }
+  const reference = convertRange(text, sheet, parsed.range, place);
   if (sheet !== null && sheet.includes(':')) {
-    return { kind: 'sheets', text };
+    const [firstSheet, lastSheet] = sheet.split(':');
+    return { kind: 'sheets', text, firstSheet, lastSheet, reference };
   }
-  const range = parsed.range;
+  return reference;
+}
+
+function convertRange(
+  text: string,
+  sheet: string | null,
+  range: RangeA1,
+  place: FormulaPlace,
+): CellNode | RangeNode {
   const corner = (
     row: number | null | undefined,
     rowIsAbsolute: boolean | null | undefined,
@@ -240,11 +263,12 @@ function convertReference(text: string, kind: string, place: FormulaPlace): Form
     };
   };
   const first = corner(range.top, range.$top, range.left, range.$left);
-  if (!/[^\]]:/.test(text.replace(/'[^']*'/g, ''))) {
+  // `A1:A1` is a range though its corners are one cell; a colon before the last `!` belongs to sheets.
+  if (!text.slice(text.lastIndexOf('!') + 1).includes(':')) {
     return { kind: 'cell', sheet, corner: first };
   }
   const last = corner(range.bottom, range.$bottom, range.right, range.$right);
-  return { kind: 'range', sheet, first, last, trim: range.trim ?? 'none' } satisfies RangeNode;
+  return { kind: 'range', sheet, first, last, trim: range.trim ?? 'none' };
 }
 
 function convertTable(text: string): FormulaNode {
