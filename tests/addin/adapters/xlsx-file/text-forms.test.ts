@@ -28,7 +28,7 @@ describe('texts in XML', () => {
       'a_b_xyz_',
     ]) {
       const escaped = escapeCellText(text);
-       
+
       expect(/[\u0000-\u0008\u000b\u000c\r\u000e-\u001f]/.test(escaped)).toBe(false);
       expect(unescapeCellText(escaped)).toBe(text);
     }
