@@ -145,7 +145,7 @@ export function searchFreeLanes(
   for (const request of requests) {
     fillAll(windows, request.range);
   }
-  forEachMeaningfulRange(workbook, (range) => {
+  forEachMeaningfulRange(workbook, new Set(windows.map(({ sheet }) => sheet)), (range) => {
     for (const window of windows) {
       if (window.sheet === range.sheet && !window.isOwn(range)) {
         window.block(range);

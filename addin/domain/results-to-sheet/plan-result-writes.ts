@@ -315,9 +315,12 @@ function movingNotices(placement: Placement, left: readonly AbandonedColumn[]): 
   return notices;
 }
 
-/** The workbook as its names will be, so that formulas that use a result name follow it. */
+/**
+ * The workbook as its names will be, so that formulas that use a result name follow it. Where none does, it is the
+ * workbook itself, whose formulas are parsed already.
+ */
 function withNames(workbook: WorkbookSnapshot, writes: readonly NameWrite[]): WorkbookSnapshot {
-  if (writes.length === 0) {
+  if (!mentionsNames(workbook, writes)) {
     return workbook;
   }
   const isFor = (name: DefinedName, write: NameWrite): boolean =>
@@ -329,6 +332,21 @@ function withNames(workbook: WorkbookSnapshot, writes: readonly NameWrite[]): Wo
   ];
   const { sheets, tables, usesDates1904, record } = workbook;
   return { sheets, names, tables, usesDates1904, record };
+}
+
+function mentionsNames(workbook: WorkbookSnapshot, writes: readonly NameWrite[]): boolean {
+  const wanted = writes.map(({ name }) => name.toLowerCase());
+  const isMention = (formula: string): boolean => {
+    const text = formula.toLowerCase();
+    return wanted.some((name) => text.includes(name));
+  };
+  let isMentioned = workbook.names.some(({ formula }) => isMention(formula));
+  for (const sheet of isMentioned || wanted.length === 0 ? [] : workbook.sheets) {
+    sheet.forEachCell((_row, _column, { formula }) => {
+      isMentioned ||= formula !== undefined && isMention(formula);
+    });
+  }
+  return isMentioned;
 }
 
 /**

@@ -12,11 +12,26 @@ import { referencesOfFormula } from '../formula/formula-references';
  */
 const printNames = /^_xlnm\.Print_(Area|Titles)$/i;
 
-/** Visits every range that a formula or a defined name refers to; the same range maybe often. */
-export function forEachMeaningfulRange(workbook: WorkbookSnapshot, visit: (range: CellRange) => void): void {
+/**
+ * Visits every range on the given sheets that a formula or a defined name refers to; the same range maybe often, and
+ * ranges of other sheets maybe as well. Tables are not looked at: they are in nobody's way twice.
+ */
+export function forEachMeaningfulRange(
+  workbook: WorkbookSnapshot,
+  sheetNames: ReadonlySet<string>,
+  visit: (range: CellRange) => void,
+): void {
+  // A formula of another sheet can mean these only by their name, as it is typed in formulas, or by a defined name,
+  // whose ranges are visited below. Most formulas of a large workbook need not be taken apart.
+  const spellings = [...sheetNames].map((name) => name.replaceAll("'", "''").toLowerCase());
+  const mentionsThem = (formula: string): boolean => {
+    const text = formula.toLowerCase();
+    return spellings.some((spelling) => text.includes(spelling));
+  };
   for (const sheet of workbook.sheets) {
+    const isOneOfThem = sheetNames.has(sheet.name);
     sheet.forEachCell((row, column, cell) => {
-      if (cell.formula !== undefined) {
+      if (cell.formula !== undefined && (isOneOfThem || mentionsThem(cell.formula))) {
         const home = { sheet: sheet.name, row, column };
         referencesOfFormula(workbook, cell.formula, home).ranges.forEach(visit);
       }
