@@ -5,6 +5,7 @@
  * Source: Suhl and Suhl (1990), "Computing sparse LU factorizations for large-scale linear programming bases",
  * ORSA Journal on Computing 2; Duff, Erisman and Reid (1986), "Direct Methods for Sparse Matrices", ch. 7 and 10.
  */
+import { grownFloat64, grownInt32 } from '../numerics/growable-arrays';
 import type { SparseMatrix } from '../sparse/sparse-matrix';
 import { ActiveSubmatrix, CountLists } from './active-submatrix';
 import type { LuFactors } from './lu-factors';
@@ -276,12 +277,10 @@ export class LuFactorizer {
   }
 
   private pushUpper(position: number, row: number, entry: number): void {
-    if (this.upperListSize === this.upperNext.length) {
-      const size = 2 * this.upperListSize;
-      this.upperNext = copied(this.upperNext, new Int32Array(size));
-      this.upperRow = copied(this.upperRow, new Int32Array(size));
-      this.upperEntry = copied(this.upperEntry, new Float64Array(size));
-    }
+    const size = this.upperListSize + 1;
+    this.upperNext = grownInt32(this.upperNext, size);
+    this.upperRow = grownInt32(this.upperRow, size);
+    this.upperEntry = grownFloat64(this.upperEntry, size);
     const at = this.upperListSize++;
     this.upperRow[at] = row;
     this.upperEntry[at] = entry;
@@ -437,9 +436,4 @@ export class LuFactorizer {
     this.rowOfPosition[pivotColumn] = pivotRow;
     this.isRowDone[pivotRow] = 1;
   }
-}
-
-function copied<T extends Int32Array | Float64Array>(from: T, to: T): T {
-  to.set(from as never);
-  return to;
 }
