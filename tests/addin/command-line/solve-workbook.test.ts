@@ -326,6 +326,23 @@ describe('other ends', () => {
     expect(folder.list()).toEqual(before);
     expect(folder.run('solve', 'late.xlsx', '--time-limit', '0').stdout).toMatch(/Stopped/);
   });
+
+  it('7: imprecise where the workbook’s own arithmetic does not agree, with a warning, and written', () => {
+    // The press hours count the results themselves: 8 before they stand there, 10 after.
+    folder.write(
+      'self.xlsx',
+      tileWorksFile({
+        cells: { D12: { formula: '8+COUNT(Week.Optimum)', value: 8 } },
+        names: { 'Week.Optimum': 'Plan!$K$5:$K$6' },
+      }),
+    );
+    const { exitCode, json } = folder.runJson('solve', 'self.xlsx');
+    expect([exitCode, json.status]).toEqual([7, 'imprecise']);
+    expect(json.written).toMatchObject({ file: 'self-planned.xlsx' });
+    expect(json.issues as unknown[]).toMatchObject([
+      { code: 'workbook-disagrees', severity: 'warning', cell: 'Plan!D12' },
+    ]);
+  });
 });
 
 describe('which plan', () => {

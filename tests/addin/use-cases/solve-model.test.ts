@@ -120,23 +120,20 @@ it('The best plan of a stopped solve is written', async () => {
 });
 
 it('AD-88 an optimal plan with which the workbook’s own arithmetic disagrees is imprecise, and is written', async () => {
-  // A stored value that the row's model rests on (AD-50) and that the formula, recalculated with the plan, contradicts.
+  // The right side counts the plan's own results: 4 while their cell is blank, 5 once the optimum stands there.
   const book = MemoryWorkbook.of({
-    sheets: {
-      Plan: { A1: 0, B1: '=A1', C1: '<=', D1: { formula: 'LEN(B3)+4', value: 4 }, B3: '=Week.Optimum' },
-    },
+    sheets: { Plan: { A3: 0, B3: '=A3', C3: '<=', D3: { formula: 'COUNT(Week.Optimum)+4', value: 4 } } },
     names: {
-      'Week.Decision': 'Plan!$A$1',
-      'Week.Objective': 'Plan!$B$1',
+      'Week.Decision': 'Plan!$A$3',
+      'Week.Objective': 'Plan!$B$3',
       'Week.Sense': '"max"',
-      'Week.Constraint': 'Plan!$B$1:$D$1',
-      'Week.Optimum': 'Plan!$H$1',
+      'Week.Constraint': 'Plan!$B$3:$D$3',
+      'Week.Optimum': 'Plan!$N$3',
     },
   });
   const outcome = await solveModel(request({ workbook: book }));
-  // The right side uses the result itself: 4 before the solve, 5 once the optimum 4 stands in its cell.
   expect(outcome).toMatchObject({ status: 'imprecise', writes: { workbookAgrees: false } });
-  expect(book.snapshot().sheets[0].cell(0, 0)?.value).toBe(4);
+  expect(book.snapshot().sheets[0].cell(2, 0)?.value).toBe(4);
 });
 
 it('A workbook that counts its days from 1904 gets the caller’s date in its own count', async () => {
@@ -169,10 +166,7 @@ describe('which plan', () => {
     ['several', { 'Day.Decision': 'Plan!$B$5' }, null],
     ['unknown', {}, 'Month'],
   ])('is asked for or missed: %s', async (reason, names, planName) => {
-    const book =
-      reason === 'none'
-        ? MemoryWorkbook.of({ sheets: { Plan: { A1: 1 } } })
-        : workbook(names);
+    const book = reason === 'none' ? MemoryWorkbook.of({ sheets: { Plan: { A1: 1 } } }) : workbook(names);
     expect(await checkModel({ workbook: book, planName, today: 0 })).toMatchObject({
       kind: 'no-such-plan',
       reason,
