@@ -27,10 +27,6 @@ export class StoredCell implements SheetCell {
     return this.ownFormula;
   }
 
-  get hasFormula(): boolean {
-    return this.shared !== undefined || this.ownFormula !== undefined;
-  }
-
   get isDate(): boolean {
     return this.format.isDate && (typeof this.value === 'number' || this.value === undefined);
   }

@@ -24,10 +24,6 @@ export class TextSplices {
     if (text !== '') this.replace(at, at, text);
   }
 
-  get isEmpty(): boolean {
-    return this.splices.length === 0;
-  }
-
   /** @throws RangeError where two changes overlap: a mistake of the caller */
   apply(): string {
     // The sort is stable: changes at one place keep their order.

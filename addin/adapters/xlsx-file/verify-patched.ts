@@ -6,13 +6,15 @@
 import { cellKey, formatCellAddress, type CellAddress } from '../../domain/sheet/cell-address';
 import type { CellValue } from '../../domain/sheet/cell-value';
 import type { DefinedName } from '../../domain/sheet/defined-name';
-import type { SheetCell } from '../../domain/sheet/sheet-snapshot';
+import { findSheet, type SheetCell } from '../../domain/sheet/sheet-snapshot';
 import type { WritePlan } from '../../domain/results-to-sheet/write-plan';
 import { WorkbookError } from '../../ports/workbook';
 import { relationshipsPartOf, contentTypesPart } from './package-parts';
 import { findRecord } from './record-part';
 import { openPackage, readWorkbook, type OpenPackage, type ReadWorkbook } from './read-workbook';
 import type { ReadSheet } from './sheet-cells';
+import { mainNamespaces, type XmlSource } from './xml-events';
+import { childOf, childrenOf, parseXmlTree } from './xml-tree';
 
 /** What a cell must hold. */
 interface ExpectedCell {
@@ -21,6 +23,8 @@ interface ExpectedCell {
   readonly value: CellValue | undefined;
   /** undefined: as before. */
   readonly formula: string | undefined;
+  /** undefined: not said by the plan. */
+  readonly numberFormat: string | undefined;
 }
 
 /**
@@ -44,7 +48,7 @@ export async function verifyPatched(
   }
   const workbookBefore = await readWorkbook(packageBefore);
   const unchangedParts = await verifyParts(packageBefore, packageAfter, plan);
-  const expected = expectedCells(plan);
+  const expected = expectedCells(plan, workbookBefore);
   verifySheets(packageBefore, workbookBefore, workbookAfter, expected, unchangedParts, plan);
   verifyNames(workbookBefore, workbookAfter, plan, fileName);
 
@@ -77,11 +81,37 @@ async function verifyParts(
     if (areSameBytes(packedBefore, packedAfter)) unchanged.add(name);
     else if (!changed.has(name)) throw notVerified(fileName, `its part ${name} has changed`);
   }
+  const styles = (await before.parts.relationshipsOf(before.workbook.part)).find(
+    ({ kind }) => kind === 'styles',
+  );
+  if (styles?.target !== undefined && !unchanged.has(styles.target)) {
+    const [first, second] = [
+      await before.parts.readText(styles.target),
+      await after.parts.readText(styles.target),
+    ];
+    if (!onlyAddsFormats(first, second)) throw notVerified(fileName, `its part ${styles.target} has changed`);
+  }
   for (const name of namesAfter.slice(namesBefore.length)) {
     // Every part that is new must unpack to what its checksum says.
     await after.parts.archive.read(name);
   }
   return unchanged;
+}
+
+/** Styles may grow by cell formats behind the ones that are there; all else in them stays to the character. */
+function onlyAddsFormats(before: XmlSource, after: XmlSource): boolean {
+  const pieces = (source: XmlSource): { around: string; formats: string[] } => {
+    const list = childOf(parseXmlTree(source), 'cellXfs', mainNamespaces);
+    const { text } = source;
+    return {
+      around: list === undefined ? text : text.slice(0, list.start) + text.slice(list.end),
+      formats: childrenOf(list, 'xf', mainNamespaces).map((format) => text.slice(format.start, format.end)),
+    };
+  };
+  const [first, second] = [pieces(before), pieces(after)];
+  return (
+    first.around === second.around && first.formats.every((format, index) => second.formats[index] === format)
+  );
 }
 
 /** The parts that a plan may change or take out, said from the plan alone. */
@@ -144,17 +174,24 @@ async function concernedParts(
 }
 
 /** What each written cell must hold in the end, by sheet (in lower case) and cellKey. */
-function expectedCells(plan: WritePlan): Map<string, Map<number, ExpectedCell>> {
+function expectedCells(plan: WritePlan, before: ReadWorkbook): Map<string, Map<number, ExpectedCell>> {
   const expected = new Map<string, Map<number, ExpectedCell>>();
+  const formatNow = (cell: CellAddress): string | undefined =>
+    expected.get(cell.sheet.toLowerCase())?.get(cellKey(cell.row, cell.column))?.numberFormat ??
+    findSheet(before, cell.sheet)?.cell(cell.row, cell.column)?.numberFormat;
   for (const write of plan) {
     if (write.kind !== 'value' && write.kind !== 'formula' && write.kind !== 'storedValue') continue;
     const sheet = write.cell.sheet.toLowerCase();
     const cells = expected.get(sheet) ?? new Map<number, ExpectedCell>();
     expected.set(sheet, cells);
     const key = cellKey(write.cell.row, write.cell.column);
-    const formula =
-      write.kind === 'formula' ? write.formula.replace(/^=/, '').trim() : cells.get(key)?.formula;
-    cells.set(key, { cell: write.cell, value: write.value, formula });
+    const source = write.kind === 'storedValue' ? undefined : write.numberFormatOf;
+    cells.set(key, {
+      cell: write.cell,
+      value: write.value,
+      formula: write.kind === 'formula' ? write.formula.replace(/^=/, '').trim() : cells.get(key)?.formula,
+      numberFormat: source === undefined ? cells.get(key)?.numberFormat : formatNow(source),
+    });
   }
   return expected;
 }
@@ -177,11 +214,17 @@ function verifySheets(
     const cells = expected.get(sheetAfter.name.toLowerCase()) ?? new Map<number, ExpectedCell>();
     const sheetBefore = index < before.sheets.length ? before.sheets[index] : undefined;
     const isUntouched = index < before.sheets.length && unchangedParts.has(workbook.sheets[index].part);
-    for (const { cell, value, formula } of cells.values()) {
+    for (const { cell, value, formula, numberFormat } of cells.values()) {
       const found = sheetAfter.cell(cell.row, cell.column);
       const formulaWanted = formula ?? sheetBefore?.cell(cell.row, cell.column)?.formula;
       if (!isSameValue(value, found) || found?.formula !== formulaWanted) {
         throw notVerified(fileName, `${formatCellAddress(cell)} does not hold what was to be written`);
+      }
+      if (numberFormat !== undefined && found !== undefined && found.numberFormat !== numberFormat) {
+        throw notVerified(
+          fileName,
+          `${formatCellAddress(cell)} does not have the number format that it should`,
+        );
       }
     }
     if (!isUntouched) verifyOtherCells(sheetBefore, sheetAfter, cells, fileName);

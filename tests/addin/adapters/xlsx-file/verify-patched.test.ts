@@ -30,6 +30,12 @@ const plan: WritePlan = [
   { kind: 'value', cell: { sheet: 'Plan', row: 0, column: 1 }, value: 5 },
   { kind: 'storedValue', cell: { sheet: 'Plan', row: 0, column: 2 }, value: 10 },
   { kind: 'value', cell: { sheet: 'Plan', row: 0, column: 5 }, value: 'Optimum' },
+  {
+    kind: 'value',
+    cell: { sheet: 'Plan', row: 0, column: 6 },
+    value: 7,
+    numberFormatOf: { sheet: 'Plan', row: 0, column: 3 },
+  },
   { kind: 'name', name: 'Week.Optimum', scope: null, formula: 'Plan!$F$2' },
   { kind: 'record', json: '{"a":1}' },
 ];
@@ -76,6 +82,11 @@ it.each<[string, (bytes: Uint8Array) => Uint8Array, string]>([
     'a text that differs',
     (b) => bent(b, sheet, 'Optimum', 'optimum'),
     'Plan!F1 does not hold what was to be written',
+  ],
+  [
+    'a number format that was not taken',
+    (b) => bent(b, sheet, '<c r="G1" s="1">', '<c r="G1">'),
+    'Plan!G1 does not have the number format that it should',
   ],
   [
     'a formula that changed under its renewed value',
