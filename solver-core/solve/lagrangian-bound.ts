@@ -23,7 +23,8 @@ export function lagrangianBound(problem: LinearProgram, rowDuals: ReadonlyFloat6
     return true;
   };
   for (let column = 0; column < problem.columnCount; column++) {
-    if (!take(reducedCosts[column], problem.columnLower[column], problem.columnUpper[column])) return undefined;
+    if (!take(reducedCosts[column], problem.columnLower[column], problem.columnUpper[column]))
+      return undefined;
   }
   for (let row = 0; row < problem.rowCount; row++) {
     if (!take(rowDuals[row], problem.rowLower[row], problem.rowUpper[row])) return undefined;

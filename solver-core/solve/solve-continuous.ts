@@ -1,14 +1,18 @@
 /**
- * The path of one continuous solve: scale → simplex → back to the stated problem → verify; where the evidence does
- * not hold, clean up and try again, a counted number of times. Advances by work units.
+ * The path of one continuous solve: presolve → scale → simplex → back to the stated problem → verify; where the
+ * evidence does not hold, clean up and try again, a counted number of times. Advances by work units.
+ *
+ * Nothing that presolve says is taken for an answer. Its contradictions and the rays of the reduced problem are
+ * carried back and verified like everything else; where that does not hold, the stated problem is solved itself.
  */
 import { tolerances } from '../control/tolerances';
 import type { Progress } from '../control/progress-event';
 import type { WorkMeter } from '../control/work-meter';
 import type { Basis } from '../linear-program/basis';
 import type { LinearProgram } from '../linear-program/linear-program';
-import type { SolutionValues, SolveResult, StoppedResult } from '../linear-program/solve-result';
-import { ScaledLinearProgram } from '../scaling/scaled-linear-program';
+import type { SolveResult, StoppedResult } from '../linear-program/solve-result';
+import { presolve } from '../presolve/presolve';
+import type { ReducedProblem } from '../presolve/reduced-problem';
 import { computationalForm } from '../simplex/computational-form';
 import { SimplexSolver, type SimplexEnd } from '../simplex/simplex-solver';
 import {
@@ -19,10 +23,12 @@ import {
 } from '../verification/verify-ray';
 import { isFeasiblePoint, verifySolution } from '../verification/verify-solution';
 import { lagrangianBound } from './lagrangian-bound';
-import { solutionFrom, statedPoint, statedSolution } from './stated-solution';
+import { SimplexSpace } from './simplex-space';
 
 /** How a solve is tried, one after the other until the evidence holds. */
 interface Attempt {
+  /** On what presolve left. */
+  readonly isReduced: boolean;
   readonly isScaled: boolean;
   readonly tolerance: number;
   /** Start from the basis of the attempt before. */
@@ -30,29 +36,53 @@ interface Attempt {
   readonly perturbsCosts: boolean;
 }
 
-const attempts: readonly Attempt[] = [
-  { isScaled: true, tolerance: tolerances.primalFeasibility, isWarm: false, perturbsCosts: true },
-  { isScaled: false, tolerance: tolerances.cleanUpFeasibility, isWarm: true, perturbsCosts: false },
-  { isScaled: true, tolerance: tolerances.cleanUpFeasibility, isWarm: true, perturbsCosts: false },
-  { isScaled: true, tolerance: tolerances.cleanUpFeasibility, isWarm: false, perturbsCosts: false },
-  { isScaled: false, tolerance: tolerances.cleanUpFeasibility, isWarm: false, perturbsCosts: true },
+const { primalFeasibility, cleanUpFeasibility } = tolerances;
+
+const statedAttempts: readonly Attempt[] = [
+  { isReduced: false, isScaled: true, tolerance: primalFeasibility, isWarm: false, perturbsCosts: true },
+  { isReduced: false, isScaled: false, tolerance: cleanUpFeasibility, isWarm: true, perturbsCosts: false },
+  { isReduced: false, isScaled: true, tolerance: cleanUpFeasibility, isWarm: true, perturbsCosts: false },
+  { isReduced: false, isScaled: true, tolerance: cleanUpFeasibility, isWarm: false, perturbsCosts: false },
+  { isReduced: false, isScaled: false, tolerance: cleanUpFeasibility, isWarm: false, perturbsCosts: true },
 ];
 
+/** After presolve: the reduced problem, then the stated one from the basis carried back, then as without presolve. */
+const presolvedAttempts: readonly Attempt[] = [
+  { isReduced: true, isScaled: true, tolerance: primalFeasibility, isWarm: false, perturbsCosts: true },
+  { isReduced: false, isScaled: true, tolerance: cleanUpFeasibility, isWarm: true, perturbsCosts: false },
+  ...statedAttempts,
+];
+
+export interface ContinuousSolveSettings {
+  readonly presolve: boolean;
+  readonly startBasis: Basis | undefined;
+  readonly iterationLimit: number;
+}
+
 export class ContinuousSolve {
+  private readonly reduced: ReducedProblem | undefined;
+  private readonly attempts: readonly Attempt[];
   private attempt = 0;
-  private scaled: ScaledLinearProgram;
+  private space: SimplexSpace;
   private solver: SimplexSolver;
   private iterationsBefore = 0;
+  private presolveResult: SolveResult | undefined;
   private bestImprecise: Extract<SolveResult, { status: 'imprecise' }> | undefined;
 
-  /** @param problem stated, validated, without integers (or with their demands dropped) */
+  /**
+   * @param problem stated, validated, without integers (or with their demands dropped)
+   * @param meter presolve is done here, and spent there
+   */
   constructor(
     private readonly problem: LinearProgram,
-    startBasis: Basis | undefined,
-    private readonly iterationLimit: number,
+    private readonly settings: ContinuousSolveSettings,
+    meter: WorkMeter,
   ) {
-    this.scaled = ScaledLinearProgram.of(problem);
-    this.solver = this.newSolver(attempts[0], startBasis);
+    const { startBasis } = settings;
+    this.reduced = settings.presolve && startBasis === undefined ? this.reduce(meter) : undefined;
+    this.attempts = this.reduced === undefined ? statedAttempts : presolvedAttempts;
+    this.space = this.newSpace(this.attempts[0]);
+    this.solver = this.newSolver(this.attempts[0], startBasis);
   }
 
   get iterations(): number {
@@ -61,6 +91,7 @@ export class ContinuousSolve {
 
   /** Spends the granted work. @returns undefined when it is spent before an end is known */
   advance(meter: WorkMeter): SolveResult | undefined {
+    if (this.presolveResult !== undefined) return this.presolveResult;
     for (;;) {
       const end = this.solver.advance(meter);
       if (end === undefined) return undefined;
@@ -71,51 +102,77 @@ export class ContinuousSolve {
   }
 
   progress(meter: WorkMeter): Progress {
-    const x = statedPoint(this.problem, this.scaled, this.solver.iterate.primal.value);
     return {
       stage: this.attempt > 0 ? 'clean-up' : this.solver.stage,
       iterations: this.iterations,
       workUnits: meter.total,
-      objective: solutionFrom(this.problem, x, new Float64Array(this.problem.rowCount)).objective,
+      objective: this.space.objective(this.solver.iterate),
       primalInfeasibility: this.solver.primalInfeasibility(),
     };
   }
 
   /** The end for a caller who stops now. */
   stopped(cause: StoppedResult['cause'], meter: WorkMeter): StoppedResult {
-    const { iterate } = this.solver;
-    iterate.bounds.restore();
+    const effort = this.effort(meter);
+    const { iterate, isFactorized } = this.solver;
+    if (!isFactorized) {
+      return { status: 'stopped', cause, best: undefined, bound: undefined, basis: undefined, ...effort };
+    }
+    iterate.restoreBounds();
     iterate.costs.restore();
-    if (this.solver.isFactorized) iterate.refactorize();
-    const solution = this.solver.isFactorized ? this.currentSolution() : undefined;
+    iterate.refactorize();
+    const { solution, basis } = this.space.statedIterate(iterate);
     return {
       status: 'stopped',
       cause,
-      best: solution !== undefined && isFeasiblePoint(this.problem, solution.x) ? solution : undefined,
-      bound: solution === undefined ? undefined : lagrangianBound(this.problem, solution.rowDuals),
-      basis: this.solver.isFactorized ? iterate.snapshot() : undefined,
-      ...this.effort(meter),
+      best: isFeasiblePoint(this.problem, solution.x) ? solution : undefined,
+      bound: lagrangianBound(this.problem, solution.rowDuals),
+      basis,
+      ...effort,
     };
+  }
+
+  /** What presolve leaves; undefined where that is the whole problem, or where it ends by itself. */
+  private reduce(meter: WorkMeter): ReducedProblem | undefined {
+    const outcome = presolve(this.problem, meter);
+    switch (outcome.kind) {
+      case 'reduced':
+        return outcome.reduced.isUnchanged ? undefined : outcome.reduced;
+      case 'infeasible': {
+        const ray = this.provenFarkasRay(outcome.ray);
+        if (ray !== undefined) {
+          this.presolveResult = { status: 'infeasible', ray, iterations: 0, workUnits: meter.total };
+        }
+        return undefined;
+      }
+      case 'unbounded':
+        return undefined; // a point and a ray are wanted: the simplex finds them, or a proof that there is no point
+    }
+  }
+
+  private newSpace(attempt: Attempt): SimplexSpace {
+    return new SimplexSpace(this.problem, attempt.isReduced ? this.reduced : undefined, attempt.isScaled);
   }
 
   private newSolver(attempt: Attempt, startBasis: Basis | undefined): SimplexSolver {
     const isCold = startBasis === undefined;
-    return new SimplexSolver(computationalForm(this.scaled.problem), {
+    return new SimplexSolver(computationalForm(this.space.problem), {
       startBasis,
       primalTolerance: attempt.tolerance,
       dualTolerance: attempt.tolerance,
-      iterationLimit: this.iterationLimit - this.iterationsBefore,
+      iterationLimit: this.settings.iterationLimit - this.iterationsBefore,
       perturbsCosts: attempt.perturbsCosts && isCold,
     });
   }
 
   private nextAttempt(): boolean {
-    if (++this.attempt >= attempts.length) return false;
-    const attempt = attempts[this.attempt];
-    const basis = this.solver.iterate.snapshot();
-    this.iterationsBefore += this.solver.iterate.iterations;
-    this.scaled = attempt.isScaled ? ScaledLinearProgram.of(this.problem) : ScaledLinearProgram.unscaled(this.problem);
-    this.solver = this.newSolver(attempt, attempt.isWarm ? basis : undefined);
+    if (++this.attempt >= this.attempts.length) return false;
+    const attempt = this.attempts[this.attempt];
+    const { iterate } = this.solver;
+    const basis = attempt.isWarm ? this.space.statedIterate(iterate).basis : undefined;
+    this.iterationsBefore += iterate.iterations;
+    this.space = this.newSpace(attempt);
+    this.solver = this.newSolver(attempt, basis);
     return true;
   }
 
@@ -130,52 +187,44 @@ export class ContinuousSolve {
       case 'limit':
         return this.stopped('iteration-limit', meter);
       case 'trouble':
-        this.keepImprecise(this.currentSolution(), end.reason, meter);
+        this.keepImprecise(end.reason, meter);
         return undefined;
     }
   }
 
   private judgeOptimal(meter: WorkMeter): SolveResult | undefined {
-    const solution = this.currentSolution();
+    const { solution, basis } = this.space.statedIterate(this.solver.iterate);
     const verdict = verifySolution(this.problem, solution);
     if (!verdict.isOptimal) {
-      this.keepImprecise(solution, verdict.reason, meter);
+      this.keepImprecise(verdict.reason, meter);
       return undefined;
     }
-    return {
-      status: 'optimal',
-      ...solution,
-      basis: this.solver.iterate.snapshot(),
-      residuals: verdict.residuals,
-      ...this.effort(meter),
-    };
+    return { status: 'optimal', ...solution, basis, residuals: verdict.residuals, ...this.effort(meter) };
   }
 
-  private judgeInfeasible(scaledRay: Float64Array, meter: WorkMeter): SolveResult | undefined {
-    const ray = scaledRay.map((entry, row) => this.scaled.statedRayEntry(row, entry));
-    for (const candidate of [ray, withoutForbiddenComponents(this.problem, ray)]) {
-      if (verifyFarkasRay(this.problem, candidate).isProof) {
-        return { status: 'infeasible', ray: candidate, ...this.effort(meter) };
-      }
-    }
-    this.keepImprecise(this.currentSolution(), 'a proof of infeasibility did not hold on the stated problem', meter);
+  private judgeInfeasible(simplexRay: Float64Array, meter: WorkMeter): SolveResult | undefined {
+    const ray = this.provenFarkasRay(this.space.statedFarkasRay(simplexRay));
+    if (ray !== undefined) return { status: 'infeasible', ray, ...this.effort(meter) };
+    this.keepImprecise('a proof of infeasibility did not hold on the stated problem', meter);
     return undefined;
   }
 
-  private judgeUnbounded(scaledDirection: Float64Array, meter: WorkMeter): SolveResult | undefined {
-    const { x } = this.currentSolution();
-    const ray = statedPoint(this.problem, this.scaled, scaledDirection);
+  private judgeUnbounded(direction: Float64Array, meter: WorkMeter): SolveResult | undefined {
+    const { x } = this.space.statedIterate(this.solver.iterate).solution;
+    const ray = this.space.statedUnboundedRay(direction);
     for (const candidate of [ray, withoutBlockedComponents(this.problem, ray)]) {
       if (verifyUnboundedRay(this.problem, x, candidate).isProof) {
         return { status: 'unbounded', x, ray: candidate, ...this.effort(meter) };
       }
     }
-    this.keepImprecise(this.currentSolution(), 'an unbounded direction did not hold on the stated problem', meter);
+    this.keepImprecise('an unbounded direction did not hold on the stated problem', meter);
     return undefined;
   }
 
-  private currentSolution(): SolutionValues {
-    return statedSolution(this.problem, this.scaled, this.solver.iterate);
+  /** The ray, as it is or without noise, where it proves the stated problem infeasible. */
+  private provenFarkasRay(ray: Float64Array): Float64Array | undefined {
+    const candidates = [ray, withoutForbiddenComponents(this.problem, ray)];
+    return candidates.find((candidate) => verifyFarkasRay(this.problem, candidate).isProof);
   }
 
   private effort(meter: WorkMeter): { iterations: number; workUnits: number } {
@@ -183,7 +232,8 @@ export class ContinuousSolve {
   }
 
   /** Of all ends that could not be proved, the one with the smallest violations is given out. */
-  private keepImprecise(solution: SolutionValues, reason: string, meter: WorkMeter): void {
+  private keepImprecise(reason: string, meter: WorkMeter): void {
+    const { solution, basis } = this.space.statedIterate(this.solver.iterate);
     const { residuals } = verifySolution(this.problem, solution);
     const worst = (r: typeof residuals): number => Math.max(r.primal, r.dual, r.dualityGap);
     if (this.bestImprecise !== undefined && worst(this.bestImprecise.residuals) <= worst(residuals)) return;
@@ -192,7 +242,7 @@ export class ContinuousSolve {
       ...solution,
       reason,
       residuals,
-      basis: this.solver.iterate.snapshot(),
+      basis,
       ...this.effort(meter),
     };
   }

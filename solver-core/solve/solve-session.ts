@@ -26,7 +26,12 @@ export class SolveSession {
     validateLinearProgram(problem);
     if (options.relax !== true) refuseIntegers(problem);
     this.meter = new WorkMeter(options.workLimit ?? Infinity);
-    this.solve = new ContinuousSolve(problem, options.startBasis, options.iterationLimit ?? Infinity);
+    const settings = {
+      presolve: options.presolve ?? true,
+      startBasis: options.startBasis,
+      iterationLimit: options.iterationLimit ?? Infinity,
+    };
+    this.solve = new ContinuousSolve(problem, settings, this.meter);
   }
 
   /** Goes on for about this many work units, or to the end. A session that is done stays done. */
@@ -34,7 +39,8 @@ export class SolveSession {
     if (this.result === undefined) {
       this.meter.grant(Math.min(workUnits, this.meter.limit - this.meter.total));
       this.result = this.solve.advance(this.meter);
-      if (this.result === undefined && this.meter.isLimitReached) this.result = this.solve.stopped('work-limit', this.meter);
+      if (this.result === undefined && this.meter.isLimitReached)
+        this.result = this.solve.stopped('work-limit', this.meter);
     }
     if (this.result !== undefined) return { state: 'done', result: this.result };
     return { state: 'running', progress: this.solve.progress(this.meter) };

@@ -1,0 +1,167 @@
+/**
+ * Finds rows, or columns, whose entries are multiples of each other's.
+ *
+ * Each line gets a hash of which places it fills and a key, a weighted sum of its entries relative to the one in its
+ * first place: parallel lines agree in the hash exactly and in the key up to rounding. Sorting brings them together;
+ * what stands together is then compared entry by entry, so that neither hash nor key decides.
+ * Source: the order of comparison after Tomlin and Welch (1986), "Finding duplicate rows in a linear programming
+ * model", Operations Research Letters 5; hashing in place of their successive splitting.
+ */
+import { tolerances } from '../control/tolerances';
+import type { ReadonlyFloat64Array, ReadonlyInt32Array } from '../numerics/typed-array-views';
+import { listEnd, type PresolveWorkspace } from './presolve-workspace';
+
+/** Lines parallel to the leader: entries of `line` = ratio × entries of the leader. */
+export interface ParallelGroup {
+  readonly leader: number;
+  readonly others: readonly { readonly line: number; readonly ratio: number }[];
+}
+
+/** What rows and columns have in common. */
+interface Lines {
+  readonly count: number;
+  /** Length of the other kind. */
+  readonly placeCount: number;
+  readonly isActive: (line: number) => boolean;
+  readonly length: ReadonlyInt32Array;
+  readonly first: ReadonlyInt32Array;
+  readonly next: ReadonlyInt32Array;
+  readonly place: ReadonlyInt32Array;
+  readonly value: ReadonlyFloat64Array;
+}
+
+/** Groups of parallel rows with at least two entries (one entry makes a bound). */
+export function parallelRows(workspace: PresolveWorkspace): ParallelGroup[] {
+  const lines: Lines = {
+    count: workspace.rowCount,
+    placeCount: workspace.columnCount,
+    isActive: (row) => workspace.isRowActive(row),
+    length: workspace.rowLength,
+    first: workspace.firstInRow,
+    next: workspace.nextInRow,
+    place: workspace.entryColumn,
+    value: workspace.entryValue,
+  };
+  return parallelLines(workspace, lines, 2);
+}
+
+/** Groups of parallel columns. */
+export function parallelColumns(workspace: PresolveWorkspace): ParallelGroup[] {
+  const lines: Lines = {
+    count: workspace.columnCount,
+    placeCount: workspace.rowCount,
+    isActive: (column) => workspace.isColumnActive(column),
+    length: workspace.columnLength,
+    first: workspace.firstInColumn,
+    next: workspace.nextInColumn,
+    place: workspace.entryRow,
+    value: workspace.entryValue,
+  };
+  return parallelLines(workspace, lines, 1);
+}
+
+function parallelLines(workspace: PresolveWorkspace, lines: Lines, leastLength: number): ParallelGroup[] {
+  const { count, length, first, next, place } = lines;
+  const hash = new Int32Array(count);
+  const linesOfHash = new Map<number, number>();
+  for (let line = 0; line < count; line++) {
+    if (!lines.isActive(line) || length[line] < leastLength) continue;
+    let sum = length[line];
+    for (let e = first[line]; e !== listEnd; e = next[e]) sum = (sum + mixed(place[e])) | 0;
+    hash[line] = sum;
+    linesOfHash.set(sum, (linesOfHash.get(sum) ?? 0) + 1);
+    workspace.work += length[line];
+  }
+  const candidates: number[] = [];
+  const key = new Float64Array(count);
+  for (let line = 0; line < count; line++) {
+    if (!lines.isActive(line) || length[line] < leastLength || linesOfHash.get(hash[line]) === 1) continue;
+    candidates.push(line);
+    key[line] = lineKey(lines, line);
+    workspace.work += length[line];
+  }
+  // Line numbers last: the order, and with it which line leads, is the same everywhere.
+  candidates.sort((a, b) => hash[a] - hash[b] || key[a] - key[b] || a - b);
+  return groupsOf(workspace, lines, candidates, hash);
+}
+
+function groupsOf(
+  workspace: PresolveWorkspace,
+  lines: Lines,
+  candidates: readonly number[],
+  hash: Int32Array,
+): ParallelGroup[] {
+  const scratchValue = new Float64Array(lines.placeCount);
+  const groups: ParallelGroup[] = [];
+  let at = 0;
+  while (at < candidates.length) {
+    const leader = candidates[at++];
+    const others: { line: number; ratio: number }[] = [];
+    scatter(lines, leader, scratchValue);
+    for (; at < candidates.length && hash[candidates[at]] === hash[leader]; at++) {
+      const ratio = parallelRatio(lines, leader, candidates[at], scratchValue);
+      workspace.work += lines.length[leader];
+      if (ratio === undefined) break;
+      others.push({ line: candidates[at], ratio });
+    }
+    clear(lines, leader, scratchValue);
+    if (others.length > 0) groups.push({ leader, others });
+  }
+  return groups;
+}
+
+/** Entries of `line` divided by the leader's, where that is one number. */
+function parallelRatio(
+  lines: Lines,
+  leader: number,
+  line: number,
+  leaderValue: Float64Array,
+): number | undefined {
+  const { length, first, next, place, value } = lines;
+  if (length[line] !== length[leader]) return undefined;
+  // The quotient of the largest entries: their rounding counts least.
+  let ratio = 0;
+  let largest = 0;
+  for (let e = first[line]; e !== listEnd; e = next[e]) {
+    const other = leaderValue[place[e]];
+    if (other === 0) return undefined;
+    if (Math.abs(value[e]) <= largest) continue;
+    largest = Math.abs(value[e]);
+    ratio = value[e] / other;
+  }
+  for (let e = first[line]; e !== listEnd; e = next[e]) {
+    const difference = Math.abs(value[e] - ratio * leaderValue[place[e]]);
+    if (difference > tolerances.presolveParallel * Math.abs(value[e])) return undefined;
+  }
+  return ratio;
+}
+
+/** Σ weight × entry, relative to the entry in the line's first place. */
+function lineKey({ first, next, place, value }: Lines, line: number): number {
+  let firstPlace = Infinity;
+  let reference = 1;
+  for (let e = first[line]; e !== listEnd; e = next[e]) {
+    if (place[e] >= firstPlace) continue;
+    firstPlace = place[e];
+    reference = value[e];
+  }
+  let sum = 0;
+  for (let e = first[line]; e !== listEnd; e = next[e]) {
+    sum += (value[e] / reference) * (1 + (mixed(place[e]) >>> 0) / 4294967296);
+  }
+  return sum;
+}
+
+function scatter({ first, next, place, value }: Lines, line: number, into: Float64Array): void {
+  for (let e = first[line]; e !== listEnd; e = next[e]) into[place[e]] = value[e];
+}
+
+function clear({ first, next, place }: Lines, line: number, scattered: Float64Array): void {
+  for (let e = first[line]; e !== listEnd; e = next[e]) scattered[place[e]] = 0;
+}
+
+/** A place number with its bits spread: sums of few places then seldom agree by chance (Knuth 1998, §6.4). */
+function mixed(place: number): number {
+  const spread = Math.imul(place + 1, 0x9e3779b1);
+  return Math.imul(spread ^ (spread >>> 15), 0x85ebca6b);
+}
