@@ -37,12 +37,14 @@ export function serialOfDate(year: number, month: number, day: number, usesDates
   const months = Math.trunc(month) - 1;
   const wholeYear = Math.trunc(year) + Math.floor(months / 12);
   const monthOfYear = months - 12 * Math.floor(months / 12) + 1;
-  const days = dayCount(wholeYear, monthOfYear, 1) + Math.trunc(day) - 1;
+  const firstOfMonth = dayCount(wholeYear, monthOfYear, 1);
+  const daysOn = Math.trunc(day) - 1;
   if (usesDates1904) {
-    return days - epoch1904;
+    return firstOfMonth - epoch1904 + daysOn;
   }
-  const serial = days - epoch1900;
-  return serial < firstOfMarch1900 ? serial - 1 : serial;
+  // Days are counted on in serials, so that 29 February 1900 is the day that never was.
+  const serial = firstOfMonth - epoch1900;
+  return (serial < firstOfMarch1900 ? serial - 1 : serial) + daysOn;
 }
 
 /** @returns undefined for serials outside the calendar */

@@ -80,13 +80,15 @@ function formatDigits(size: number, section: string): string | undefined {
     return undefined;
   }
   // From the first to the last digit place; what stands around it is shown as it is.
-  const shape = /^((?:"[^"]*"|[^0#?."])*)([0#?,]*)(\.[0#?]*)?((?:"[^"]*"|[^0#?."])*)$/.exec(section);
+  const shape = /^((?:"[^"]*"|[^0#?."])*)([0#?,]*)(\.[0#?]*,*)?((?:"[^"]*"|[^0#?."])*)$/.exec(section);
   if (shape === null) {
     return undefined;
   }
-  const [, before, wholePlaces, decimalPlaces = '', after] = shape;
+  const [, before, wholePlaces, decimalsAndScale = '', after] = shape;
+  const decimalPlaces = decimalsAndScale.replace(/,+$/, '');
   const percents = (plain.match(/%/g) ?? []).length;
-  const thousandsScaled = /,+$/.exec(wholePlaces)?.[0].length ?? 0;
+  // Commas behind the last place divide by a thousand each.
+  const thousandsScaled = /,*$/.exec(wholePlaces + decimalsAndScale)![0].length;
   const scaled = (size * 100 ** percents) / 1000 ** thousandsScaled;
   const decimals = Math.max(0, decimalPlaces.length - 1);
   if (wholePlaces === '' && decimalPlaces === '') {

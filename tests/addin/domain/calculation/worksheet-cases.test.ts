@@ -81,12 +81,15 @@ it.each(cases)('%s is worked out', (formula, expected) => {
   expectValue(evaluateFormula(formula, workbook), expected);
 });
 
-it.each(cases)('%s is worked out with the prefixes that files put before newer functions', (formula, expected) => {
-  const stored = formula
-    .replace(/\b(XLOOKUP|LET|SEQUENCE|BYROW|LAMBDA|UNIQUE|XMATCH|HSTACK|AGGREGATE)\(/g, '_xlfn.$1(')
-    .replace('FILTER(', '_xlfn._xlws.FILTER(')
-    .replace('LET(x,2,x*3)', 'LET(_xlpm.x,2,_xlpm.x*3)')
-    .replace('LAMBDA(r,SUM(r))', 'LAMBDA(_xlpm.r,SUM(_xlpm.r))')
-    .replace(/^@(.*)$/, '_xlfn.SINGLE($1)');
-  expectValue(evaluateFormula(stored, workbook), expected);
-});
+it.each(cases)(
+  '%s is worked out with the prefixes that files put before newer functions',
+  (formula, expected) => {
+    const stored = formula
+      .replace(/\b(XLOOKUP|LET|SEQUENCE|BYROW|LAMBDA|UNIQUE|XMATCH|HSTACK|AGGREGATE)\(/g, '_xlfn.$1(')
+      .replace('FILTER(', '_xlfn._xlws.FILTER(')
+      .replace('LET(x,2,x*3)', 'LET(_xlpm.x,2,_xlpm.x*3)')
+      .replace('LAMBDA(r,SUM(r))', 'LAMBDA(_xlpm.r,SUM(_xlpm.r))')
+      .replace(/^@(.*)$/, '_xlfn.SINGLE($1)');
+    expectValue(evaluateFormula(stored, workbook), expected);
+  },
+);
