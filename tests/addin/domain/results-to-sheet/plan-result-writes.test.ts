@@ -297,6 +297,27 @@ describe('the next solve', () => {
     expect(codes(writes)).toEqual(['results-moved']);
   });
 
+  it('of a block with a row inserted in its middle refreshes the columns that have grown with it', async () => {
+    const workbook = tileWorks();
+    await write(workbook, optimum);
+    // As a spreadsheet program leaves it: Sand moved down a row, every name over both rows has grown.
+    await typed(workbook, { B6: 'Ochre', C6: 0, B7: 'Sand', C7: 6 });
+    await typed(workbook, { E6: null, F6: null, G6: null, E7: 1, F7: 6, G7: 0 });
+    const grown = { Decision: 'C', Before: 'E', Optimum: 'F', ReducedCost: 'G' };
+    await workbook.apply(
+      Object.entries(grown).map(([role, column]) => {
+        const formula = `Plan!$${column}$5:$${column}$7`;
+        return { kind: 'name', name: `Week.${role}`, scope: null, formula } as const;
+      }),
+    );
+    const writes = await write(workbook, { values: [2, 1, 5], reducedCosts: [0, 0, 0], dualValues: [1, 2] });
+    expect(rowOf(workbook, 'E5', 3)).toEqual([2, 2, 0]);
+    expect(rowOf(workbook, 'E6', 3)).toEqual([0, 1, 0]);
+    expect(rowOf(workbook, 'E7', 3)).toEqual([6, 5, 0]);
+    expect(cellOf(workbook, 'G6')?.numberFormat).toBe('€ 0.00');
+    expect(writes.notices).toEqual([]);
+  });
+
   it('brings back a column that a planner deleted, and leaves the others where they are', async () => {
     const workbook = tileWorks();
     await write(workbook, optimum);
@@ -458,6 +479,122 @@ describe('results that find no room', () => {
       'Week results 2',
     ]);
     expect(held(workbook, 'A1', 'Week results')).toBe('mine');
+  });
+});
+
+describe('other forms of the statement', () => {
+  it('coefficients: the objective has no cell, dual values take no format, and nothing is compared with it', async () => {
+    const workbook = MemoryWorkbook.of({
+      sheets: {
+        Plan: {
+          B3: 'Slate',
+          C3: 'Sand',
+          A4: 'Made',
+          B4: 0,
+          C4: 0,
+          A5: 'Price',
+          B5: 4,
+          C5: 3,
+          A8: 'Kiln',
+          B8: 2,
+          C8: 1,
+          D8: '<=',
+          E8: 10,
+          A9: 'Press',
+          B9: 1,
+          C9: 1,
+          D9: '<=',
+          E9: 8,
+        },
+      },
+      names: {
+        Week_Decision: 'Plan!$B$4:$C$4',
+        Week_Objective: 'Plan!$B$5:$C$5',
+        Week_Sense: '"max"',
+        Week_Constraint: 'Plan!$B$8:$E$9',
+      },
+    });
+    const writes = await write(workbook, optimum);
+    expect(writes.workbookObjective).toBeNull();
+    expect(writes.workbookAgrees).toBe(true);
+    expect(rowOf(workbook, 'G7', 1)).toEqual(['Left side\nwhat it is']);
+    expect(rowOf(workbook, 'G8', 3)).toEqual([10, 0, 1]);
+    expect(nameOf(workbook, 'Week_DualValue')).toBe('Plan!$I$8:$I$9');
+    // The decisions lie on their side: rows 6 and further are blank, but 8 and 9 hold the constraint rows.
+    expect(nameOf(workbook, 'Week_Optimum')).toBe('Plan!$B$12:$C$12');
+  });
+
+  it('parts apart: results stand beside the left sides, past relations and right sides', async () => {
+    const workbook = MemoryWorkbook.of({
+      sheets: {
+        Plan: {
+          C5: 1,
+          C6: 1,
+          C8: '=4*C5+3*C6',
+          B11: '=2*C5+C6',
+          B12: '=C5+C6',
+          D11: 10,
+          D12: 8,
+          E11: 'hours',
+        },
+      },
+      names: {
+        'Week.Decision': 'Plan!$C$5:$C$6',
+        'Week.Objective': 'Plan!$C$8',
+        'Week.Sense': '"maximise"',
+        'Week.Left': 'Plan!$B$11:$B$12',
+        'Week.Relation': '"<="',
+        'Week.Right': 'Plan!$D$11:$D$12',
+      },
+    });
+    const writes = await write(workbook, optimum);
+    expect(writes.columns.slice(3).map(({ range }) => formatCellRange(range))).toEqual([
+      'Plan!G11:G12',
+      'Plan!H11:H12',
+      'Plan!I11:I12',
+    ]);
+    expect(rowOf(workbook, 'G11', 3)).toEqual([10, 0, 1]);
+  });
+
+  it('a union of cells below each other: the lines between stay blank', async () => {
+    const workbook = tileWorks(
+      { names: { 'Week.Decision': 'Plan!$C$5,Plan!$C$7' } },
+      {
+        B6: 'Price',
+        C6: 12,
+        B7: 'Sand',
+        C7: 1,
+        C8: { formula: '4*C5+3*C7', value: 7 },
+        B11: { formula: '2*C5+C7', value: 3 },
+        B12: { formula: 'C5+C7', value: 2 },
+      },
+    );
+    await write(workbook, optimum);
+    expect(rowOf(workbook, 'C5', 5)).toEqual([2, null, 1, 2, 0]);
+    expect(rowOf(workbook, 'C6', 5)).toEqual([12, null, null, null, null]);
+    expect(rowOf(workbook, 'C7', 5)).toEqual([6, null, 1, 6, 0]);
+    expect(nameOf(workbook, 'Week.Optimum')).toBe('Plan!$F$5:$F$7');
+    await write(workbook, other);
+    expect(rowOf(workbook, 'F5', 1)).toEqual([4]);
+    expect(rowOf(workbook, 'F7', 1)).toEqual([2]);
+  });
+
+  it('two plans for the same decision cells have their results beside each other', async () => {
+    const workbook = tileWorks({
+      names: {
+        'Day.Decision': 'Plan!$C$5:$C$6',
+        'Day.Objective': 'Plan!$C$8',
+        'Day.Sense': '"minimise"',
+        'Day.Constraint': 'Plan!$B$11:$D$12',
+      },
+    });
+    await write(workbook, optimum, { planName: 'Week' });
+    await write(workbook, other, { planName: 'Day' });
+    expect(nameOf(workbook, 'Week.Optimum')).toBe('Plan!$F$5:$F$6');
+    expect(nameOf(workbook, 'Day.Optimum')).toBe('Plan!$J$5:$J$6');
+    const again = await write(workbook, optimum, { planName: 'Week' });
+    expect(again.notices).toEqual([]);
+    expect(rowOf(workbook, 'J5', 1)).toEqual([4]);
   });
 });
 
