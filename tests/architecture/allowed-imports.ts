@@ -66,7 +66,6 @@ const domainRooms: readonly Room[] = [
   {
     path: 'addin/domain/calculation',
     mayImport: addin('domain/sheet', 'domain/formula'),
-    packages: ['numfmt'],
   },
   {
     path: 'addin/domain/linearization',
@@ -104,7 +103,7 @@ const addinRooms: readonly Room[] = [
   {
     path: 'addin/adapters/xlsx-file',
     mayImport: addin('ports', 'domain'),
-    packages: ['@zip.js/zip.js', 'saxes', '@borgar/fx', 'numfmt'],
+    packages: ['@zip.js/zip.js', 'saxes', '@borgar/fx'],
   },
   {
     path: 'addin/adapters/xlsx-file/file-on-disk.ts',
