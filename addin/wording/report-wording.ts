@@ -2,6 +2,7 @@
  * Texts around a result: headings that stand on the sheet, what was written where, files and plans that cannot be
  * had, and the caution under every plan.
  */
+import type { NotRecalculatedReason } from '../domain/calculation/recalculate';
 import { formatCellAddress } from '../domain/sheet/cell-address';
 import type { ResultNotice } from '../domain/results-to-sheet/result-notice';
 import type { ResultTexts } from '../domain/results-to-sheet/result-texts';
@@ -31,6 +32,19 @@ export const resultTexts: ResultTexts = {
 export const caution =
   'A plan is advice from the numbers given. Local codes, labour rules and licensed practice decide.';
 
+/** Why a formula has no new value, within a sentence. */
+const hindrances: Readonly<Record<NotRecalculatedReason, string>> = {
+  'not-affine': 'it was asked for an affine form',
+  'unknown-function': 'it uses a function that is not known here',
+  'formula-syntax': 'its formula cannot be read',
+  'too-deep': 'its formula has too many brackets within one another',
+  'array-too-large': 'it works out too many cells at once',
+  'external-reference': 'it refers to another workbook',
+  'several-sheets': 'it refers to several sheets at once',
+  'circular-reference': 'it waits for itself',
+  'builds-on-such-a-cell': 'it builds on a cell of which the same is true',
+};
+
 /** What the planner must hear about the writing of results. */
 export function sentenceOfNotice(notice: ResultNotice): string {
   const at = notice.cell === null ? '' : formatCellAddress(notice.cell);
@@ -44,7 +58,7 @@ export function sentenceOfNotice(notice: ResultNotice): string {
     case 'results-on-own-sheet':
       return `${listText(notice.facts.names)} stand on the sheet ${quoted(notice.facts.sheet)}, one row for each, because there is no room for them beside their block.`;
     case 'not-recalculated':
-      return `${at} depends on the plan but could not be recalculated here (${notice.facts.reason}). It shows its value once the workbook is opened in a spreadsheet program.`;
+      return `${at} depends on the plan but could not be recalculated here: ${hindrances[notice.facts.reason]}. It shows its value once the workbook is opened in a spreadsheet program.`;
     case 'workbook-disagrees': {
       const { what, workbook, model } = notice.facts;
       const held = typeof workbook === 'number' ? amountText(workbook) : workbook;

@@ -2,6 +2,7 @@
  * What a planner must hear about the writing of results, as data. The sentences stand in
  * addin/wording/report-wording.ts.
  */
+import type { NotRecalculatedReason } from '../calculation/recalculate';
 import type { CellAddress } from '../sheet/cell-address';
 
 /** Facts of each notice: numbers, and cells and ranges as text. */
@@ -15,7 +16,7 @@ export interface ResultNoticeFacts {
   /** No free columns near the block (or a grid): its results stand in a table on a sheet of their own. */
   'results-on-own-sheet': { readonly names: readonly string[]; readonly sheet: string };
   /** A formula depends on the plan and could not be recalculated: it has no stored value until the file is opened. */
-  'not-recalculated': { readonly reason: string };
+  'not-recalculated': { readonly reason: NotRecalculatedReason };
   /** The workbook's own arithmetic gives another value than the model. */
   'workbook-disagrees': { readonly what: string; readonly workbook: number | string; readonly model: number };
 }
