@@ -343,7 +343,11 @@ class Parser {
     this.pairNumbers[1] = secondNumber;
   }
 
+  /** Does the line belong to the set that counts? One without a name for its set always does. */
   private isFirstSet(section: Section, set: string, line: DataLine): boolean {
+    if (set === '') {
+      return true;
+    }
     const first = this.firstSets.get(section);
     if (first === undefined) {
       this.firstSets.set(section, set);
