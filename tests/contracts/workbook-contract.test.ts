@@ -4,6 +4,9 @@ import { buildXlsx } from '../support/xlsx-builder';
 import { inMemory } from './describe-in-memory';
 import { describeWorkbookContract } from './workbook-contract';
 
+// Slow only on a busy machine, and never judged by time.
+jest.setTimeout(60_000);
+
 describeWorkbookContract('in an .xlsx file', (description) =>
   XlsxWorkbook.open(buildXlsx(description), 'week.xlsx'),
 );

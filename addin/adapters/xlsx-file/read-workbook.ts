@@ -3,13 +3,13 @@
  */
 import type { DefinedName } from '../../domain/sheet/defined-name';
 import type { TableSnapshot, WorkbookSnapshot } from '../../domain/sheet/sheet-snapshot';
-import { PackageParts } from './package-parts';
+import { contentTypesPart, PackageParts } from './package-parts';
 import { findRecord } from './record-part';
 import { readSharedStrings } from './shared-strings-xml';
 import { emptySheetContent, ReadSheet } from './sheet-cells';
 import { readSurroundings } from './sheet-marks';
 import { readCellFormats, type CellFormat } from './styles-xml';
-import { findWorkbookPart, readWorkbookPart, type WorkbookPart } from './workbook-xml';
+import { findWorkbookPart, otherDocument, readWorkbookPart, type WorkbookPart } from './workbook-xml';
 import { readWorksheet } from './worksheet-xml';
 import { ZipArchive } from './zip-archive';
 
@@ -27,7 +27,11 @@ export interface OpenPackage {
 
 /** @throws WorkbookError with one sentence for each kind of fault */
 export async function openPackage(bytes: Uint8Array, fileName: string): Promise<OpenPackage> {
-  const parts = await PackageParts.open(await ZipArchive.open(bytes, fileName));
+  const archive = await ZipArchive.open(bytes, fileName);
+  // OpenDocument files and plain archives are zips too. Where there is anything of a workbook, it is a damaged one.
+  const hasWorkbookParts = archive.names.some((name) => /^(_rels|xl)\//i.test(name));
+  if (!archive.has(contentTypesPart) && !hasWorkbookParts) throw otherDocument(fileName);
+  const parts = await PackageParts.open(archive);
   return { parts, workbook: await readWorkbookPart(parts, await findWorkbookPart(parts)) };
 }
 

@@ -33,12 +33,7 @@ export async function findWorkbookPart(parts: PackageParts): Promise<string> {
   const main = (await parts.relationshipsOf('')).find(
     (relationship) => relationship.kind === 'officeDocument',
   );
-  if (main?.target === undefined) {
-    const isOtherDocument = parts.archive.has('mimetype') || parts.archive.has('content.xml');
-    throw isOtherDocument
-      ? otherDocument(parts.fileName)
-      : damagedFile(parts.fileName, 'it names no workbook part');
-  }
+  if (main?.target === undefined) throw damagedFile(parts.fileName, 'it names no workbook part');
   if (!parts.has(main.target)) {
     throw damagedFile(parts.fileName, `its part ${excerpt(main.target)} is missing`);
   }
@@ -115,7 +110,8 @@ function readNames(fileName: string, root: XmlNode, sheets: readonly SheetEntry[
   });
 }
 
-function otherDocument(fileName: string): Error {
+/** A package of another program, or a mere archive. */
+export function otherDocument(fileName: string): Error {
   return unreadableKind(
     'not-a-workbook',
     fileName,

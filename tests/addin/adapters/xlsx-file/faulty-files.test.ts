@@ -10,6 +10,9 @@ import { compoundFile } from '../../../support/compound-file';
 import { buildXlsx, xlsxParts, type XlsxDescription } from '../../../support/xlsx-builder';
 import { buildZip, type ZipEntry } from '../../../support/zip-builder';
 
+// Large files and many rounds: slow only on a busy machine, and never judged by time.
+jest.setTimeout(60_000);
+
 const week: XlsxDescription = {
   sheets: [
     {
@@ -133,16 +136,16 @@ const faults: Fault[] = [
         { name: 'mimetype', content: 'application/vnd.oasis.opendocument.spreadsheet', isStored: true },
         { name: 'content.xml', content: '<office/>' },
       ]),
-    'damaged',
-    damaged('its part [Content_Types].xml is missing'),
+    'not-a-workbook',
+    otherDocument,
   ],
   [
     'a zip of photographs',
     () => buildZip([{ name: 'tile.jpg', content: 'x' }]),
-    'damaged',
-    damaged('its part [Content_Types].xml is missing'),
+    'not-a-workbook',
+    otherDocument,
   ],
-  ['an empty zip', () => buildZip([]), 'damaged', damaged('its part [Content_Types].xml is missing')],
+  ['an empty zip', () => buildZip([]), 'not-a-workbook', otherDocument],
   // The container.
   [
     'a file cut off in the middle',
@@ -198,12 +201,12 @@ const faults: Fault[] = [
     large(`is packed more densely than any workbook is (${sheet}) and is not unpacked`),
   ],
   [
-    'a part that says it is small and would unpack to 200 MB',
+    'a part that says it is small and would unpack to 60 MB',
     () =>
       buildZip(
         entriesOf().map((entry) =>
           entry.name === sheet
-            ? { name: sheet, content: new Uint8Array(200 * 1024 * 1024), claimedSize: 4000 }
+            ? { name: sheet, content: new Uint8Array(60 * 1024 * 1024), claimedSize: 4000 }
             : entry,
         ),
       ),

@@ -17,6 +17,9 @@ import { buildXlsx, xlsxParts, type XlsxDescription } from '../../../support/xls
 import { buildZip } from '../../../support/zip-builder';
 import { inspectZip, textInZip } from '../../../support/zip-inspector';
 
+// Slow only on a busy machine, and never judged by time.
+jest.setTimeout(60_000);
+
 const sheetPart = 'xl/worksheets/sheet1.xml';
 
 function at(text: string, sheet = 'Plan'): CellAddress {

@@ -5,6 +5,9 @@ import { openPackage, readWorkbook } from '../../../../addin/adapters/xlsx-file/
 import { buildXlsx, xlsxParts, type XlsxDescription } from '../../../support/xlsx-builder';
 import { buildZip } from '../../../support/zip-builder';
 
+// Slow only on a busy machine, and never judged by time.
+jest.setTimeout(60_000);
+
 async function read(bytes: Uint8Array): Promise<WorkbookSnapshot> {
   return readWorkbook(await openPackage(bytes, 'week.xlsx'));
 }

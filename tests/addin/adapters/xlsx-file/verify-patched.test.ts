@@ -7,6 +7,9 @@ import { buildXlsx } from '../../../support/xlsx-builder';
 import { buildZip } from '../../../support/zip-builder';
 import { inspectZip } from '../../../support/zip-inspector';
 
+// Slow only on a busy machine, and never judged by time.
+jest.setTimeout(60_000);
+
 const before = buildXlsx({
   sheets: [
     {
