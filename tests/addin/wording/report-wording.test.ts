@@ -29,7 +29,10 @@ const notices: [ResultNotice, RegExp][] = [
     resultNotice('results-on-own-sheet', null, { names: ['Week.Optimum'], sheet: 'Week results' }),
     /“Week results”/,
   ],
-  [resultNotice('not-recalculated', cell, { reason: 'unknown-function' }), /F7 .*a function that is not known.*opened/],
+  [
+    resultNotice('not-recalculated', cell, { reason: 'unknown-function' }),
+    /F7 .*a function that is not known.*opened/,
+  ],
   [
     resultNotice('workbook-disagrees', cell, { what: 'Kiln', workbook: '#N/A', model: 3 }),
     /Kiln.*#N\/A.*3.*Do not rely/,
