@@ -5,11 +5,13 @@
  * a cell whose value the caller gives (a decision cell; a changed cell).
  */
 import type { CellAddress } from '../sheet/cell-address';
+import { cellCountOf } from '../sheet/cell-range';
 import { CellError, type CellValue } from '../sheet/cell-value';
 import type { SheetCell, SheetSnapshot, WorkbookSnapshot } from '../sheet/sheet-snapshot';
 import { formulaCacheOf, type FormulaCache } from '../formula/formula-cache';
 import type { FormulaSyntaxIssue, ParsedFormula } from '../formula/formula-syntax';
 import { workbookIndexOf, type WorkbookIndex } from '../formula/workbook-index';
+import { maximumArrayCells } from './array-size';
 
 /** A cell that holds a formula; for an array formula its first cell, which stands for all that it fills. */
 export class FormulaCell {
@@ -128,11 +130,12 @@ export class SheetGrid {
     return (this.built[column] ??= new BuiltColumn());
   }
 
-  /** An array formula fills no cell that holds something of its own, and none beyond what the sheet uses. */
+  /** An array formula fills no cell that holds something of its own; a huge one none beyond what the sheet uses. */
   private placeArrayParts(anchor: FormulaCell): void {
     const range = anchor.cell.arrayRange!;
-    const bottom = Math.min(range.bottom, Math.max(this.sheet.rowCount - 1, anchor.row));
-    const right = Math.min(range.right, Math.max(this.sheet.columnCount - 1, anchor.column));
+    const isHuge = cellCountOf(range) > maximumArrayCells;
+    const bottom = isHuge ? Math.min(range.bottom, this.sheet.rowCount - 1) : range.bottom;
+    const right = isHuge ? Math.min(range.right, this.sheet.columnCount - 1) : range.right;
     for (let column = range.left; column <= right; column++) {
       const { entries } = this.columnToFill(column);
       for (let row = range.top; row <= bottom; row++) {

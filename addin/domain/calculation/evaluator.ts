@@ -10,6 +10,7 @@
  * as array formulas are throughout.
  */
 import { CellError, type CellValue } from '../sheet/cell-value';
+import type { CellAddress } from '../sheet/cell-address';
 import type { CellRange } from '../sheet/cell-range';
 import type { BinaryNode, CallNode, FormulaNode, NameNode, UnaryNode } from '../formula/formula-syntax';
 import { isReferenceFault, rangeOfNode, rangeOfTable, type ReferenceFault } from '../formula/static-ranges';
@@ -44,8 +45,9 @@ import {
 } from './evaluation-refusal';
 import { refuseTooLarge } from './array-size';
 import { worksheetFunctions } from './functions/worksheet-functions';
-import type { AmountSum, NumberDomain } from './number-domain';
+import type { Amount, AmountSum, NumberDomain } from './number-domain';
 import { applyOperator, applyUnary, type ScalarOperator } from './operators';
+import { RunningTotals } from './running-totals';
 import type { FunctionContext, WorksheetFunction } from './worksheet-function';
 
 /** Names that lead to names, and lambdas that call lambdas. */
@@ -89,6 +91,7 @@ export class Evaluator implements FunctionContext {
 
   private readonly outcomes: (CellOutcome | undefined)[] = [];
   private readonly isUnderWay: boolean[] = [];
+  private readonly runningTotals = new RunningTotals();
   private needed: FormulaCell | undefined;
   private home: SheetGrid | undefined;
   private scope: Scope | undefined;
@@ -102,6 +105,11 @@ export class Evaluator implements FunctionContext {
     this.domain = settings.domain;
     this.now = settings.now;
     this.usesDates1904 = grid.workbook.usesDates1904;
+  }
+
+  /** The cell whose formula is being worked out. */
+  get currentCell(): CellAddress {
+    return this.homeAddress();
   }
 
   /** Works out a cell, whether or not its stored value would do. */
@@ -423,6 +431,12 @@ export class Evaluator implements FunctionContext {
     return this.domain.newSum();
   }
 
+  runningTotal(area: Area, sum: (area: Area, from: Amount | undefined) => Amount): Amount {
+    return this.runningTotals.totalOf(area, sum, (total) =>
+      typeof total === 'number' ? total : this.domain.keep(total),
+    );
+  }
+
   // Trees.
 
   evaluate(node: FormulaNode): Value {
@@ -501,7 +515,7 @@ export class Evaluator implements FunctionContext {
     }
   }
 
-  private homeAddress(): { sheet: string; row: number; column: number } {
+  private homeAddress(): CellAddress {
     return { sheet: this.home!.name, row: this.row, column: this.column };
   }
 

@@ -34,6 +34,8 @@ export interface NumberDomain {
   multiply(a: DependentNumber, b: DependentNumber): DependentNumber | undefined;
   /** The plain number that a dependent one always equals, or undefined where the decisions matter. */
   constantValue(amount: DependentNumber): number | undefined;
+  /** The same amount in a form that is cheap to take up many times. */
+  keep(amount: DependentNumber): DependentNumber;
   /** Whether a function keeps within the domain when this argument (from 0) depends on decisions. */
   acceptsDependent(functionName: string, argument: number): boolean;
 }
@@ -47,6 +49,7 @@ export const plainNumbers: NumberDomain = {
   add: notPlain,
   multiply: notPlain,
   constantValue: notPlain,
+  keep: notPlain,
   acceptsDependent: () => false,
 };
 

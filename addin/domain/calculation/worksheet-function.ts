@@ -3,7 +3,7 @@
  */
 import type { FormulaNode } from '../formula/formula-syntax';
 import type { Area, Lambda, Matrix, Reference, Scalar, Value } from './evaluated-value';
-import type { AmountSum, NumberDomain } from './number-domain';
+import type { Amount, AmountSum, NumberDomain } from './number-domain';
 
 /** The evaluator, as functions see it while one cell is worked out. */
 export interface FunctionContext {
@@ -34,6 +34,8 @@ export interface FunctionContext {
   isSubtotal(area: Area, row: number, column: number): boolean;
   scalarAt(area: Area, row: number, column: number): Scalar;
   newSum(): AmountSum;
+  /** The sum of a range; on from that of a shorter range with the same first cell, where one is known. */
+  runningTotal(area: Area, sum: (area: Area, from: Amount | undefined) => Amount): Amount;
 }
 
 /** Takes single values; given arrays, it is worked out element by element. */

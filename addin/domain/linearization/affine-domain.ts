@@ -5,16 +5,20 @@ import type { Amount, AmountSum, DependentNumber, NumberDomain } from '../calcul
 import { AffineForm } from './affine-form';
 import { acceptsDependent } from './affine-functions';
 
-export const affineForms: NumberDomain = {
-  hasDependentNumbers: true,
-  newSum: () => new AffineSum(),
-  scale: (amount, factor) => formOf(amount).scaled(factor),
-  divide: (amount, divisor) => formOf(amount).dividedBy(divisor),
-  add: addForms,
-  multiply: multiplyForms,
-  constantValue: (amount) => (formOf(amount).isConstant ? formOf(amount).constant : undefined),
-  acceptsDependent,
-};
+/** @param keep names a form that is long, see NamedForms */
+export function affineForms(keep: (form: AffineForm) => AffineForm): NumberDomain {
+  return {
+    hasDependentNumbers: true,
+    newSum: () => new AffineSum(),
+    scale: (amount, factor) => formOf(amount).scaled(factor),
+    divide: (amount, divisor) => formOf(amount).dividedBy(divisor),
+    add: addForms,
+    multiply: multiplyForms,
+    constantValue: (amount) => (formOf(amount).isConstant ? formOf(amount).constant : undefined),
+    keep: (amount) => keep(formOf(amount)),
+    acceptsDependent,
+  };
+}
 
 function formOf(amount: DependentNumber): AffineForm {
   return amount as AffineForm;

@@ -17,6 +17,7 @@ import { AffineForm } from './affine-form';
 /** A cell turned into a free variable with a defining row: variable = form. */
 export interface DefiningRow {
   readonly variable: number;
+  /** The cell whose formula gives the form; of a running total the formula may hold more than the sum named here. */
   readonly cell: CellAddress;
   readonly form: AffineForm;
 }

@@ -83,7 +83,10 @@ class Linearizer {
     this.named = new NamedForms(decisions.length);
     this.stored = new StoredValueCheck(this.graph, current);
     this.evaluator = new Evaluator(this.grid, {
-      domain: affineForms,
+      domain: affineForms((form) => {
+        const cell = this.evaluator.currentCell;
+        return this.nameIfLong(form, () => cell);
+      }),
       inputs: decisions.map((_cell, variable) => AffineForm.variable(variable)),
       now,
       needsEvaluation: (cell) => this.graph.needsEvaluation(cell),
@@ -146,12 +149,15 @@ class Linearizer {
     if (!(value instanceof AffineForm)) {
       return value;
     }
-    if (!Number.isFinite(value.constant) || !value.coefficients.every(Number.isFinite)) {
-      return errorValue.number;
-    }
-    const named = this.named.nameIfLong(value, cell);
-    if (named !== value) {
-      this.stored.addVariable(value);
+    return Number.isFinite(value.constant) && value.coefficients.every(Number.isFinite)
+      ? this.nameIfLong(value, cell)
+      : errorValue.number;
+  }
+
+  private nameIfLong(form: AffineForm, cell: () => CellAddress): AffineForm {
+    const named = this.named.nameIfLong(form, cell);
+    if (named !== form) {
+      this.stored.addVariable(form);
     }
     return named;
   }

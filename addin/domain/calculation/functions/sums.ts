@@ -3,7 +3,7 @@
  */
 import { CellError } from '../../sheet/cell-value';
 import { toInteger, toNumber } from '../coercions';
-import { errorValue, isDependent, Reference, type Scalar, type Value } from '../evaluated-value';
+import { errorValue, isDependent, Reference, type Area, type Scalar, type Value } from '../evaluated-value';
 import { dependentValueRefusal } from '../evaluation-refusal';
 import type { Amount } from '../number-domain';
 import { finite, multiplyAmounts } from '../operators';
@@ -11,10 +11,27 @@ import { generalFunction, type FunctionContext, type FunctionTable } from '../wo
 import { averageOf, finiteAmount, forEachAmount } from './counted-amounts';
 import { aggregateNumbers } from './statistics';
 
-export function sumOf(values: readonly Value[], context: FunctionContext): Scalar {
+function sumOf(values: readonly Value[], context: FunctionContext): Scalar {
   const sum = context.newSum();
-  forEachAmount(values, context, (amount) => sum.add(amount));
+  for (const value of values) {
+    if (value instanceof Reference) {
+      value.areas.forEach((area) =>
+        sum.add(context.runningTotal(area, (part, from) => sumOfArea(part, from, context))),
+      );
+    } else {
+      forEachAmount([value], context, (amount) => sum.add(amount));
+    }
+  }
   return finiteAmount(sum.total());
+}
+
+function sumOfArea(area: Area, from: Amount | undefined, context: FunctionContext): Amount {
+  const sum = context.newSum();
+  if (from !== undefined) {
+    sum.add(from);
+  }
+  forEachAmount([new Reference([area])], context, (amount) => sum.add(amount));
+  return sum.total();
 }
 
 function productOf(values: readonly Value[], context: FunctionContext): Scalar {
