@@ -118,7 +118,7 @@ export async function solveModel(
       texts: request.texts,
       now,
     });
-    await request.workbook.apply(writes.plan);
+    await request.workbook.apply(writes.plan, snapshot);
   }
   const disagrees = writes?.workbookAgrees === false;
   return {

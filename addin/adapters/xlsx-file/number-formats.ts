@@ -1,6 +1,5 @@
 /**
- * Number formats: the ones that are known by number alone (ECMA-376 Part 1, §18.8.30), and whether a format shows
- * its number as a date or a time.
+ * Number formats that are known by number alone (ECMA-376 Part 1, §18.8.30).
  */
 
 export const generalFormat = 'General';
@@ -8,22 +7,6 @@ export const generalFormat = 'General';
 /** The code of a built-in format; undefined for a number that is not built in. */
 export function builtInFormat(id: number): string | undefined {
   return builtIn.get(id) ?? (isEastAsianDate(id) ? 'yyyy/m/d' : undefined);
-}
-
-/**
- * Whether a format code shows a date or a time. Literal text, escapes, colours, currencies and conditions do not
- * count; `[h]`, `[m]` and `[s]` (elapsed time) do.
- */
-export function isDateFormat(code: string): boolean {
-  return code.split(';').some((section) => {
-    const bare = section
-      .replace(/"[^"]*"?|\\.|_.|\*./g, '')
-      .replace(/\[(?!h+\]|m+\]|s+\])[^\]]*\]/gi, '')
-      .replace(/general/gi, '')
-      .replace(/s\.0+/gi, 's');
-    // A digit placeholder makes it a number; E+ and E- belong to numbers.
-    return !/[0#?]/.test(bare) && /[dmyhs]|AM\/PM|A\/P/i.test(bare);
-  });
 }
 
 /** Dates and times in the formats that East Asian versions have under these numbers. */

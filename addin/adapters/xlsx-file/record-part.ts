@@ -2,14 +2,13 @@
  * Planrow's own part of a workbook: a custom XML part whose root is in our namespace, found through the workbook's
  * relationships, so that a copy saved by another program still has it (ECMA-376 Part 1, §15.2.4).
  */
+import { jsonForXml, recordNamespace } from '../../domain/results-to-sheet/record-text';
 import type { PackageParts } from './package-parts';
 import { asOpenTag } from './start-tag';
 import { TextSplices } from './text-splices';
 import type { XmlSource } from './xml-events';
 import { escapeXmlText } from './xml-escapes';
 import { parseXmlTree, type XmlNode } from './xml-tree';
-
-export const recordNamespace = 'urn:planrow:record:1';
 
 /** The record's part, with the JSON text that it holds; undefined where the workbook has none. */
 export async function findRecord(
@@ -38,7 +37,7 @@ async function customXmlRoot(parts: PackageParts, part: string): Promise<XmlNode
 export function recordText(source: XmlSource, json: string): string {
   const root = parseXmlTree(source);
   const splices = new TextSplices(source.text);
-  const content = escapeXmlText(withoutIllegalCharacters(json));
+  const content = escapeXmlText(jsonForXml(json));
   if (root.tag.isSelfClosing) {
     const tag = asOpenTag(source.text.slice(root.start, root.end));
     splices.replace(root.start, root.end, `${tag}${content}</${root.tag.name}>`);
@@ -51,7 +50,7 @@ export function recordText(source: XmlSource, json: string): string {
 /** The parts of a record that a workbook has not got yet: the item itself, and the one that names its namespace. */
 export function newRecordParts(json: string): { item: string; properties: string } {
   const declaration = '<?xml version="1.0" encoding="UTF-8" standalone="yes"?>\n';
-  const content = escapeXmlText(withoutIllegalCharacters(json));
+  const content = escapeXmlText(jsonForXml(json));
   return {
     item: `${declaration}<record xmlns="${recordNamespace}">${content}</record>`,
     properties:
@@ -65,11 +64,3 @@ export const recordPropertiesType = 'application/vnd.openxmlformats-officedocume
 /** One record a workbook, so that one number serves them all; it must only differ from other programs' numbers. */
 const recordItemId = '{6C1F0B52-9E4D-4A37-8B66-2D90A7E3C514}';
 const customXmlNamespace = 'http://schemas.openxmlformats.org/officeDocument/2006/customXml';
-
-/** In JSON such characters stand only inside strings, where an escape means the same. */
-function withoutIllegalCharacters(json: string): string {
-  return json.replace(
-    /[\uFFFE\uFFFF]|[\uD800-\uDBFF](?![\uDC00-\uDFFF])|(?<![\uD800-\uDBFF])[\uDC00-\uDFFF]/g,
-    (character) => `\\u${character.charCodeAt(0).toString(16).padStart(4, '0')}`,
-  );
-}

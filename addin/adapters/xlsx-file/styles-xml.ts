@@ -1,7 +1,8 @@
 /**
  * The styles part, as far as reading needs it: the number format of each cell format (ECMA-376 Part 1, §18.8).
  */
-import { builtInFormat, generalFormat, isDateFormat } from './number-formats';
+import { isDateFormat } from '../../domain/sheet/date-format';
+import { builtInFormat, generalFormat } from './number-formats';
 import { attributeOf, mainNamespaces } from './xml-events';
 import { childOf, childrenOf, type XmlNode } from './xml-tree';
 

@@ -1,4 +1,5 @@
-import { builtInFormat, isDateFormat } from '../../../../addin/adapters/xlsx-file/number-formats';
+import { builtInFormat } from '../../../../addin/adapters/xlsx-file/number-formats';
+import { isDateFormat } from '../../../../addin/domain/sheet/date-format';
 
 describe('number formats', () => {
   // By hand, from the meaning of the codes (ECMA-376 Part 1, §18.8.31).
