@@ -55,18 +55,18 @@ function impliedInterval(
   rowLower: number,
   rowUpper: number,
 ): { readonly lower: number; readonly upper: number } {
-  const activity = workspace.rowActivity(row);
+  const { activities } = workspace;
   const columnLower = workspace.columnLower[column];
   const columnUpper = workspace.columnUpper[column];
   if (coefficient > 0) {
     return {
-      lower: (rowLower - activity.greatestWithout(coefficient * columnUpper)) / coefficient,
-      upper: (rowUpper - activity.leastWithout(coefficient * columnLower)) / coefficient,
+      lower: (rowLower - activities.greatestWithout(row, coefficient * columnUpper)) / coefficient,
+      upper: (rowUpper - activities.leastWithout(row, coefficient * columnLower)) / coefficient,
     };
   }
   return {
-    lower: (rowUpper - activity.leastWithout(coefficient * columnUpper)) / coefficient,
-    upper: (rowLower - activity.greatestWithout(coefficient * columnLower)) / coefficient,
+    lower: (rowUpper - activities.leastWithout(row, coefficient * columnUpper)) / coefficient,
+    upper: (rowLower - activities.greatestWithout(row, coefficient * columnLower)) / coefficient,
   };
 }
 

@@ -63,19 +63,21 @@ export function parallelColumns(workspace: PresolveWorkspace): ParallelGroup[] {
 function parallelLines(workspace: PresolveWorkspace, lines: Lines, leastLength: number): ParallelGroup[] {
   const { count, length, first, next, place } = lines;
   const hash = new Int32Array(count);
-  const linesOfHash = new Map<number, number>();
+  // How many lines fall into each bucket of hashes: one that is alone there has no parallel.
+  const buckets = new Uint32Array(bucketCountFor(count));
+  const mask = buckets.length - 1;
   for (let line = 0; line < count; line++) {
     if (!lines.isActive(line) || length[line] < leastLength) continue;
     let sum = length[line];
     for (let e = first[line]; e !== listEnd; e = next[e]) sum = (sum + mixed(place[e])) | 0;
     hash[line] = sum;
-    linesOfHash.set(sum, (linesOfHash.get(sum) ?? 0) + 1);
+    buckets[sum & mask]++;
     workspace.work += length[line];
   }
   const candidates: number[] = [];
   const key = new Float64Array(count);
   for (let line = 0; line < count; line++) {
-    if (!lines.isActive(line) || length[line] < leastLength || linesOfHash.get(hash[line]) === 1) continue;
+    if (!lines.isActive(line) || length[line] < leastLength || buckets[hash[line] & mask] === 1) continue;
     candidates.push(line);
     key[line] = lineKey(lines, line);
     workspace.work += length[line];
@@ -83,6 +85,13 @@ function parallelLines(workspace: PresolveWorkspace, lines: Lines, leastLength: 
   // Line numbers last: the order, and with it which line leads, is the same everywhere.
   candidates.sort((a, b) => hash[a] - hash[b] || key[a] - key[b] || a - b);
   return groupsOf(workspace, lines, candidates, hash);
+}
+
+/** A power of two, a few times the number of lines. */
+function bucketCountFor(lineCount: number): number {
+  let buckets = 64;
+  while (buckets < 4 * lineCount) buckets *= 2;
+  return buckets;
 }
 
 function groupsOf(

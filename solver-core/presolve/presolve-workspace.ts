@@ -17,7 +17,7 @@ import { grownFloat64, grownInt32 } from '../numerics/growable-arrays';
 import type { ReadonlyFloat64Array, ReadonlyInt32Array } from '../numerics/typed-array-views';
 import { nonzeroCount } from '../sparse/sparse-matrix';
 import { ChangeQueue } from './change-queue';
-import { RowActivity } from './row-activity';
+import { RowActivities } from './row-activities';
 
 /** What stands in a link after the last entry of a row or column. */
 export const listEnd = -1;
@@ -27,8 +27,11 @@ export class PresolveWorkspace {
   readonly columnCount: number;
   readonly changedRows: ChangeQueue;
   readonly changedColumns: ChangeQueue;
+  readonly activities: RowActivities;
   /** Work units since the start: entries looked at or changed. */
   work = 0;
+  /** Entries that were taken away, added or given another value since the start. */
+  entryChanges = 0;
 
   private readonly lowerOfRow: Float64Array;
   private readonly upperOfRow: Float64Array;
@@ -38,6 +41,7 @@ export class PresolveWorkspace {
   private readonly costOfColumn: Float64Array;
   private readonly entriesInRow: Int32Array;
   private readonly entriesInColumn: Int32Array;
+  private readonly singletonsInRow: Int32Array;
   private readonly firstOfRow: Int32Array;
   private readonly firstOfColumn: Int32Array;
   /** 1 while the row or column is part of the problem. */
@@ -60,8 +64,6 @@ export class PresolveWorkspace {
 
   /** Entry of one scattered column in each row, listEnd where it has none; all listEnd between calls. Length m. */
   private readonly scratchEntryOfRow: Int32Array;
-  private readonly activity = new RowActivity();
-  private activityRow = -1;
 
   constructor(problem: LinearProgram) {
     const { rowCount, columnCount, matrix } = problem;
@@ -81,6 +83,7 @@ export class PresolveWorkspace {
     if (sign < 0) for (let column = 0; column < columnCount; column++) this.costOfColumn[column] *= -1;
     this.entriesInRow = new Int32Array(rowCount);
     this.entriesInColumn = new Int32Array(columnCount);
+    this.singletonsInRow = new Int32Array(rowCount);
     this.firstOfRow = new Int32Array(rowCount).fill(listEnd);
     this.firstOfColumn = new Int32Array(columnCount).fill(listEnd);
     this.rowIsActive = new Uint8Array(rowCount).fill(1);
@@ -97,6 +100,7 @@ export class PresolveWorkspace {
     this.changedRows = ChangeQueue.ofAll(rowCount);
     this.changedColumns = ChangeQueue.ofAll(columnCount);
     this.loadEntries(problem);
+    this.activities = new RowActivities(this);
   }
 
   get rowLower(): ReadonlyFloat64Array {
@@ -131,6 +135,11 @@ export class PresolveWorkspace {
   /** Number of entries of each row. */
   get rowLength(): ReadonlyInt32Array {
     return this.entriesInRow;
+  }
+
+  /** Number of entries of each row whose columns have no other. */
+  get singletonCount(): ReadonlyInt32Array {
+    return this.singletonsInRow;
   }
 
   get columnLength(): ReadonlyInt32Array {
@@ -186,19 +195,6 @@ export class PresolveWorkspace {
     return this.lowerOfRow[row] === this.upperOfRow[row];
   }
 
-  /**
-   * Least and greatest activity of a row under the column bounds as they are. The object is used again by the next
-   * call: read it at once.
-   */
-  rowActivity(row: number): RowActivity {
-    if (this.activityRow !== row) {
-      this.activity.compute(this, row);
-      this.work += this.entriesInRow[row];
-      this.activityRow = row;
-    }
-    return this.activity;
-  }
-
   setRowBounds(row: number, lower: number, upper: number): void {
     const losesSide =
       (lower === -Infinity && this.lowerOfRow[row] !== -Infinity) ||
@@ -215,10 +211,9 @@ export class PresolveWorkspace {
     this.upperOfColumn[column] = upper;
     this.changedColumns.add(column);
     for (let e = this.firstOfColumn[column]; e !== listEnd; e = this.nextOfColumn[e]) {
-      this.changedRows.add(this.rowOfEntry[e]);
+      this.markRow(this.rowOfEntry[e]);
     }
     this.work += this.entriesInColumn[column];
-    this.activityRow = -1;
   }
 
   setCost(column: number, cost: number): void {
@@ -246,16 +241,16 @@ export class PresolveWorkspace {
     this.entriesInRow[row] = 0;
     this.rowIsActive[row] = 0;
     this.activeRows--;
-    this.activityRow = -1;
   }
 
   /** Takes a column out of the problem, as if its value were 0. */
   removeColumn(column: number): void {
+    if (this.entriesInColumn[column] === 1) this.singletonsInRow[this.onlyRow(column)]--;
     for (let e = this.firstOfColumn[column]; e !== listEnd;) {
       const next = this.nextOfColumn[e];
       const row = this.rowOfEntry[e];
       this.unlinkFromRow(e, row);
-      this.changedRows.add(row);
+      this.markRow(row);
       this.releaseEntry(e);
       e = next;
     }
@@ -264,7 +259,6 @@ export class PresolveWorkspace {
     this.entriesInColumn[column] = 0;
     this.columnIsActive[column] = 0;
     this.activeColumns--;
-    this.activityRow = -1;
   }
 
   /** Takes a column out of the problem at a value, which goes into the right sides and the constant. */
@@ -322,6 +316,7 @@ export class PresolveWorkspace {
         this.addEntry(row, into, amount);
         continue;
       }
+      this.entryChanges++;
       const before = this.valueOfEntry[at];
       const after = withoutCancellation(before + amount, before, amount);
       if (after !== 0) this.valueOfEntry[at] = after;
@@ -329,19 +324,24 @@ export class PresolveWorkspace {
         scratchEntryOfRow[row] = listEnd;
         this.removeEntry(at);
       }
-      this.changedRows.add(row);
+      this.markRow(row);
     }
     for (let e = this.firstOfColumn[into]; e !== listEnd; e = this.nextOfColumn[e]) {
       scratchEntryOfRow[this.rowOfEntry[e]] = listEnd;
     }
     this.changedColumns.add(into);
-    this.activityRow = -1;
   }
 
   private shiftRow(row: number, amount: number): void {
     this.lowerOfRow[row] += amount;
     this.upperOfRow[row] += amount;
     this.scaleOfRow[row] = Math.max(this.scaleOfRow[row], Math.abs(amount));
+    this.markRow(row);
+  }
+
+  /** A row whose entries, column bounds or scale changed. */
+  private markRow(row: number): void {
+    this.activities.markStale(row);
     this.changedRows.add(row);
   }
 
@@ -354,10 +354,16 @@ export class PresolveWorkspace {
 
   /** A column with one entry is looked at from its row. */
   private markRowOfSingleton(column: number): void {
-    if (this.entriesInColumn[column] === 1) this.changedRows.add(this.rowOfEntry[this.firstOfColumn[column]]);
+    if (this.entriesInColumn[column] === 1) this.changedRows.add(this.onlyRow(column));
+  }
+
+  /** The row of a column with one entry. */
+  private onlyRow(column: number): number {
+    return this.rowOfEntry[this.firstOfColumn[column]];
   }
 
   private addEntry(row: number, column: number, value: number): void {
+    this.entryChanges++;
     let e = this.freeEntry;
     if (e !== listEnd) this.freeEntry = this.nextOfRow[e];
     else {
@@ -368,7 +374,7 @@ export class PresolveWorkspace {
     this.columnOfEntry[e] = column;
     this.valueOfEntry[e] = value;
     this.linkFirst(e, row, column);
-    this.changedRows.add(row);
+    this.markRow(row);
   }
 
   private removeEntry(entry: number): void {
@@ -385,6 +391,8 @@ export class PresolveWorkspace {
     if (afterInRow !== listEnd) this.previousOfRow[afterInRow] = e;
     this.firstOfRow[row] = e;
     this.entriesInRow[row]++;
+    if (this.entriesInColumn[column] === 0) this.singletonsInRow[row]++;
+    else if (this.entriesInColumn[column] === 1) this.singletonsInRow[this.onlyRow(column)]--;
     const afterInColumn = this.firstOfColumn[column];
     this.nextOfColumn[e] = afterInColumn;
     this.previousOfColumn[e] = listEnd;
@@ -408,11 +416,13 @@ export class PresolveWorkspace {
     if (before === listEnd) this.firstOfColumn[column] = after;
     else this.nextOfColumn[before] = after;
     if (after !== listEnd) this.previousOfColumn[after] = before;
-    this.entriesInColumn[column]--;
+    if (this.entriesInColumn[column]-- === 1) this.singletonsInRow[this.rowOfEntry[e]]--;
+    else if (this.entriesInColumn[column] === 1) this.singletonsInRow[this.onlyRow(column)]++;
     this.markRowOfSingleton(column);
   }
 
   private releaseEntry(e: number): void {
+    this.entryChanges++;
     this.nextOfRow[e] = this.freeEntry;
     this.freeEntry = e;
   }
@@ -436,6 +446,7 @@ export class PresolveWorkspace {
       const end = columnStart[column + 1];
       this.entriesInColumn[column] = end - columnStart[column];
       if (end > columnStart[column]) this.firstOfColumn[column] = columnStart[column];
+      if (end === columnStart[column] + 1) this.singletonsInRow[rowIndex[columnStart[column]]]++;
       for (let e = columnStart[column]; e < end; e++) {
         const row = rowIndex[e];
         this.rowOfEntry[e] = row;

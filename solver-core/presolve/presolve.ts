@@ -29,6 +29,8 @@ export type PresolveOutcome =
 const mostPasses = 60;
 /** Times that all rows and all columns are compared with each other. */
 const mostComparisons = 4;
+/** They are compared again only when at least this share of the entries has changed since. */
+const shareChanged = 0.05;
 
 /**
  * @param problem stated; whole-number demands are ignored
@@ -61,17 +63,17 @@ function reduceToFixedPoint(
 ): PresolveEnd | undefined {
   const size = workspace.work + workspace.rowCount + workspace.columnCount;
   const mostWork = mostPasses * size;
-  for (let comparison = 0; ; comparison++) {
+  for (let comparison = 0; comparison < mostComparisons; comparison++) {
     const end = followChanges(workspace, stack, reductions, mostWork);
-    if (end !== undefined) return end;
-    if (comparison === mostComparisons || workspace.work > mostWork) return undefined;
-    const stepsBefore = stack.length;
+    if (end !== undefined || workspace.work > mostWork) return end;
+    const changesBefore = workspace.entryChanges;
     for (const reduction of reductions.ofProblem) {
       const finding = reduction.applyToProblem(workspace, stack);
       if (isEnd(finding)) return finding;
     }
-    if (stack.length === stepsBefore) return undefined;
+    if (workspace.entryChanges - changesBefore < shareChanged * size) break;
   }
+  return followChanges(workspace, stack, reductions, mostWork);
 }
 
 /** Looks at every row and column that waits, rows first, until none does. */

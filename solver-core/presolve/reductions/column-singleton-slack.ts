@@ -42,6 +42,7 @@ export const columnSingletonSlack: RowReduction<ColumnSingletonSlack> = {
   name: 'column-singleton-slack',
 
   applyToRow(workspace, row, stack) {
+    if (workspace.singletonCount[row] === 0) return 'nothing';
     const slacks: TakenSlack[] = [];
     const smallestPivot = tolerances.presolvePivot * largestEntry(workspace, row);
     for (let e = workspace.firstInRow[row]; e !== listEnd;) {

@@ -73,10 +73,11 @@ export const forcingRow: RowReduction<ForcingRow> = {
 
 /** The bound at which the row's activity is held by its columns' bounds alone; undefined where there is room. */
 function forcingSide(workspace: PresolveWorkspace, row: number): Side | undefined {
-  const { least, greatest, tolerance } = workspace.rowActivity(row);
+  const { activities } = workspace;
+  const slack = activities.slack(row);
   const upper = workspace.rowUpper[row];
   const lower = workspace.rowLower[row];
-  if (Number.isFinite(upper) && Math.abs(least - upper) <= tolerance) return 'upper';
-  if (Number.isFinite(lower) && Math.abs(greatest - lower) <= tolerance) return 'lower';
+  if (Number.isFinite(upper) && Math.abs(activities.least(row) - upper) <= slack) return 'upper';
+  if (Number.isFinite(lower) && Math.abs(activities.greatest(row) - lower) <= slack) return 'lower';
   return undefined;
 }

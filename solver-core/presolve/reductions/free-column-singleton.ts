@@ -31,12 +31,13 @@ export const freeColumnSingleton: RowReduction<FreeColumnSingleton> = {
   name: 'free-column-singleton',
 
   applyToRow(workspace, row, stack) {
+    if (workspace.singletonCount[row] === 0) return 'nothing';
     for (let e = workspace.firstInRow[row]; e !== listEnd; e = workspace.nextInRow[e]) {
       const column = workspace.entryColumn[e];
       if (workspace.columnLength[column] !== 1) continue;
       const pivot = workspace.entryValue[e];
       const side = sideToMeet(workspace, row, column, pivot);
-      if (side === undefined || !workspace.rowActivity(row).isPivot(pivot)) continue;
+      if (side === undefined || !workspace.activities.isPivot(row, pivot)) continue;
       const rightSide = (side === 'lower' ? workspace.rowLower : workspace.rowUpper)[row];
       if (!Number.isFinite(rightSide)) continue;
       if (!isImpliedFreeAt(workspace, row, column, pivot, rightSide)) continue;

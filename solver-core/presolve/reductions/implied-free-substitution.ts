@@ -60,24 +60,23 @@ export const impliedFreeSubstitution: ColumnReduction<ImpliedFreeSubstitution> =
   },
 };
 
-/** The entry in the shortest equation that makes no growth and is large enough; undefined where there is none. */
+/** The entry in the shortest equation that makes no growth, if it is large enough; undefined where there is none. */
 function choosePivot(workspace: PresolveWorkspace, column: number): number | undefined {
-  const columnLength = workspace.columnLength[column];
-  let largestInColumn = 0;
-  for (let e = workspace.firstInColumn[column]; e !== listEnd; e = workspace.nextInColumn[e]) {
-    largestInColumn = Math.max(largestInColumn, Math.abs(workspace.entryValue[e]));
-  }
+  const { nextInColumn, entryRow, entryValue, rowLength } = workspace;
+  const others = workspace.columnLength[column] - 1;
   let best: number | undefined;
   let bestLength = Infinity;
-  for (let e = workspace.firstInColumn[column]; e !== listEnd; e = workspace.nextInColumn[e]) {
-    const row = workspace.entryRow[e];
-    const rowLength = workspace.rowLength[row];
-    const grows = (rowLength - 1) * (columnLength - 1) > rowLength + columnLength - 1;
-    if (grows || rowLength >= bestLength || !workspace.isEquation(row)) continue;
-    const isLargeInColumn = Math.abs(workspace.entryValue[e]) >= tolerances.presolvePivot * largestInColumn;
-    if (!isLargeInColumn || !workspace.rowActivity(row).isPivot(workspace.entryValue[e])) continue;
+  let largestInColumn = 0;
+  for (let e = workspace.firstInColumn[column]; e !== listEnd; e = nextInColumn[e]) {
+    const row = entryRow[e];
+    const length = rowLength[row];
+    largestInColumn = Math.max(largestInColumn, Math.abs(entryValue[e]));
+    const grows = (length - 1) * others > length + others;
+    if (grows || length >= bestLength || !workspace.isEquation(row)) continue;
     best = e;
-    bestLength = rowLength;
+    bestLength = length;
   }
-  return best;
+  if (best === undefined || Math.abs(entryValue[best]) < tolerances.presolvePivot * largestInColumn)
+    return undefined;
+  return workspace.activities.isPivot(entryRow[best], entryValue[best]) ? best : undefined;
 }

@@ -21,11 +21,14 @@ export const redundantRow: RowReduction<RedundantRow> = {
   applyToRow(workspace, row, stack) {
     const lower = workspace.rowLower[row];
     const upper = workspace.rowUpper[row];
-    const { least, greatest, tolerance } = workspace.rowActivity(row);
-    if (greatest < lower - tolerance) return { kind: 'infeasible', multipliers: [{ row, multiplier: 1 }] };
-    if (least > upper + tolerance) return { kind: 'infeasible', multipliers: [{ row, multiplier: -1 }] };
-    const isLowerRedundant = least >= lower - tolerance;
-    const isUpperRedundant = greatest <= upper + tolerance;
+    const { activities } = workspace;
+    const least = activities.least(row);
+    const greatest = activities.greatest(row);
+    const slack = activities.slack(row);
+    if (greatest < lower - slack) return { kind: 'infeasible', multipliers: [{ row, multiplier: 1 }] };
+    if (least > upper + slack) return { kind: 'infeasible', multipliers: [{ row, multiplier: -1 }] };
+    const isLowerRedundant = least >= lower - slack;
+    const isUpperRedundant = greatest <= upper + slack;
     if (isLowerRedundant && isUpperRedundant) {
       stack.push(redundantRow, { row });
       workspace.removeRow(row);

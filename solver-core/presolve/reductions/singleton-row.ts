@@ -76,13 +76,13 @@ function findContradiction(
   row: number,
   coefficient: number,
 ): PresolveEnd | undefined {
-  const activity = workspace.rowActivity(row);
+  const { activities } = workspace;
   // In the column's units a tolerance of the row counts divided by the coefficient; large coefficients must not hide it.
-  const slack = Math.max(activity.tolerance, tolerances.presolveFeasibility * Math.abs(coefficient));
-  if (activity.greatest < workspace.rowLower[row] - slack) {
+  const slack = Math.max(activities.slack(row), tolerances.presolveFeasibility * Math.abs(coefficient));
+  if (activities.greatest(row) < workspace.rowLower[row] - slack) {
     return { kind: 'infeasible', multipliers: [{ row, multiplier: 1 }] };
   }
-  if (activity.least > workspace.rowUpper[row] + slack) {
+  if (activities.least(row) > workspace.rowUpper[row] + slack) {
     return { kind: 'infeasible', multipliers: [{ row, multiplier: -1 }] };
   }
   return undefined;
