@@ -261,6 +261,27 @@ export function describeWorkbookContract(implementation: string, open: OpenWorkb
       );
     });
 
+    it('takes names away without regard to case, leaves those of other scopes, and can create them anew', async () => {
+      const workbook = await opened();
+      await workbook.apply([
+        { kind: 'removeName', name: 'WEEK.decision', scope: null },
+        { kind: 'removeName', name: 'Rate', scope: null },
+        { kind: 'removeName', name: 'Never.There', scope: null },
+        { kind: 'name', name: 'Week.Sense', scope: null, formula: '"maximise"' },
+      ]);
+      const namesOf = async (): Promise<string[]> =>
+        (await workbook.read()).names.map(({ name }) => name).sort();
+      expect(await namesOf()).toEqual(['Kept', 'Rate', 'Week.Sense']);
+      await workbook.apply([
+        { kind: 'removeName', name: 'Week.Sense', scope: null },
+        { kind: 'removeName', name: 'Kept', scope: null },
+        { kind: 'removeName', name: 'Rate', scope: 'Cost data' },
+      ]);
+      expect(await namesOf()).toEqual([]);
+      await workbook.apply([{ kind: 'name', name: 'Week.Decision', scope: null, formula: 'Plan!$B$1' }]);
+      expect(await namesOf()).toEqual(['Week.Decision']);
+    });
+
     it('keeps a record, and replaces it whole', async () => {
       const workbook = await opened();
       await workbook.apply([{ kind: 'record', json: '{"plan":"Week","text":"<&> ü \\n"}' }]);

@@ -297,6 +297,11 @@ function stateAfter(state: MemoryState, plan: WritePlan): MemoryState {
           existing === undefined ? [...names, renewed] : names.map((n) => (n === existing ? renewed : n));
         return;
       }
+      case 'removeName':
+        names = names.filter(
+          (name) => !(isSameText(name.name, write.name) && isSameScope(name.scope, write.scope)),
+        );
+        return;
       case 'record':
         record = write.json;
         return;

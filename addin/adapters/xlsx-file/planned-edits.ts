@@ -4,7 +4,12 @@
  */
 import { cellKey, formatCellAddress, type CellAddress } from '../../domain/sheet/cell-address';
 import type { CellValue } from '../../domain/sheet/cell-value';
-import type { NameWrite, WorkbookWrite, WritePlan } from '../../domain/results-to-sheet/write-plan';
+import type {
+  NameRemoval,
+  NameWrite,
+  WorkbookWrite,
+  WritePlan,
+} from '../../domain/results-to-sheet/write-plan';
 import { WorkbookError } from '../../ports/workbook';
 import { xlsxLimits } from './xlsx-limits';
 
@@ -38,7 +43,8 @@ export interface PlannedEdits {
   /** By the sheet's name to the letter, sheets added by the plan among them. */
   readonly sheets: ReadonlyMap<string, SheetEdits>;
   readonly addedSheets: readonly string[];
-  readonly names: readonly NameWrite[];
+  /** In their order: of several for one name, the last counts. */
+  readonly names: readonly (NameWrite | NameRemoval)[];
   readonly record: string | undefined;
   readonly recalculatesOnOpening: boolean;
 }
@@ -56,7 +62,7 @@ export function planEdits(plan: WritePlan, sheetNames: readonly string[], fileNa
 class EditPlanner implements PlannedEdits {
   readonly sheets = new Map<string, SheetEdits>();
   readonly addedSheets: string[] = [];
-  readonly names: NameWrite[] = [];
+  readonly names: (NameWrite | NameRemoval)[] = [];
   record: string | undefined;
   recalculatesOnOpening = false;
   /** The names of all sheets to the letter, by their name in lower case. */
@@ -129,6 +135,9 @@ class EditPlanner implements PlannedEdits {
         return;
       case 'name':
         this.addName(write);
+        return;
+      case 'removeName':
+        this.names.push(write);
         return;
       case 'record':
         this.record = write.json;

@@ -159,6 +159,7 @@ async function concernedParts(
         add(workbook.part);
         break;
       case 'name':
+      case 'removeName':
       case 'recalculateOnOpening':
         add(workbook.part);
         break;
@@ -269,6 +270,7 @@ function verifyNames(before: ReadWorkbook, after: ReadWorkbook, plan: WritePlan,
   const wanted = new Map(before.names.map((name) => [keyOf(name), name.formula]));
   for (const write of plan) {
     if (write.kind === 'name') wanted.set(keyOf(write), write.formula.replace(/^=/, '').trim());
+    if (write.kind === 'removeName') wanted.delete(keyOf(write));
   }
   const found = new Map(after.names.map((name) => [keyOf(name), name.formula]));
   for (const [key, formula] of wanted) {

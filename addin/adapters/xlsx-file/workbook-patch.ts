@@ -2,7 +2,7 @@
  * The workbook part with sheets and names added or changed, and with the request to calculate on opening. New
  * children go where the schema has them (ECMA-376 Part 1, §18.2.27).
  */
-import type { NameWrite } from '../../domain/results-to-sheet/write-plan';
+import type { NameRemoval, NameWrite } from '../../domain/results-to-sheet/write-plan';
 import { damagedFile } from './file-faults';
 import { asOpenTag, withAttribute } from './start-tag';
 import { TextSplices } from './text-splices';
@@ -19,7 +19,7 @@ export interface WorkbookChange {
   /** Sheets before the change, in the order of their tabs. */
   readonly sheetNames: readonly string[];
   readonly addedSheets: readonly AddedSheet[];
-  readonly names: readonly NameWrite[];
+  readonly names: readonly (NameWrite | NameRemoval)[];
   readonly recalculatesOnOpening: boolean;
 }
 
@@ -83,6 +83,7 @@ function writeNames(source: XmlSource, root: XmlNode, change: WorkbookChange, sp
   const list = childOf(root, 'definedNames', mainNamespaces);
   const existing = childrenOf(list, 'definedName', mainNamespaces);
   const added = new Map<string, string>();
+  const removed: XmlNode[] = [];
   // Of several writes to one name, the last counts.
   const last = new Map(
     change.names.map((name) => [`${name.name.toLowerCase()}|${sheetIndex(name.scope)}`, name]),
@@ -94,6 +95,10 @@ function writeNames(source: XmlSource, root: XmlNode, change: WorkbookChange, sp
         attributeOf(tag, 'name')?.toLowerCase() === write.name.toLowerCase() &&
         attributeOf(tag, 'localSheetId') === index,
     );
+    if (write.kind === 'removeName') {
+      if (node !== undefined) removed.push(node);
+      continue;
+    }
     const formula = escapeXmlText(write.formula);
     if (node === undefined) {
       const local = index === undefined ? '' : ` localSheetId="${index}"`;
@@ -109,6 +114,12 @@ function writeNames(source: XmlSource, root: XmlNode, change: WorkbookChange, sp
       splices.replace(node.contentStart, node.contentEnd, formula);
     }
   }
+  if (list !== undefined && added.size === 0 && removed.length > 0 && removed.length === existing.length) {
+    // A list without names is left out, as the spreadsheet program does.
+    splices.replace(list.start, list.end, '');
+    return;
+  }
+  for (const { start, end } of removed) splices.replace(start, end, '');
   if (added.size === 0) return;
   // Lists are kept in the order of the alphabet, as the spreadsheet program writes them.
   const ordered = [...added].sort(([a], [b]) => compareNames(a, b));

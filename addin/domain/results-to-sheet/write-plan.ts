@@ -57,6 +57,14 @@ export interface NameWrite {
   readonly formula: string;
 }
 
+/** A defined name taken away, if it is there. What it referred to stays as it is. */
+export interface NameRemoval {
+  readonly kind: 'removeName';
+  readonly name: string;
+  /** Sheet it is local to; null for the whole workbook. */
+  readonly scope: string | null;
+}
+
 /** Our own part of the workbook, replaced whole. */
 export interface RecordWrite {
   readonly kind: 'record';
@@ -76,6 +84,7 @@ export type WorkbookWrite =
   | ColumnWidthWrite
   | SheetAddition
   | NameWrite
+  | NameRemoval
   | RecordWrite
   | RecalculationRequest;
 
