@@ -14,6 +14,11 @@ export const tolerances = {
   harrisDualSlack: 1e-7,
   /** Ratio tests, absolute on the pivot column or row: entries below are no candidates. Reason: noise of ftran. */
   ratioTestPivot: 1e-9,
+  /**
+   * Ratio tests, absolute, tried only when nothing above ratioTestPivot stands in the way: before a problem is called
+   * infeasible or unbounded, entries of badly scaled problems that are small but no noise get their say.
+   */
+  ratioTestLastPivot: 1e-12,
   /** A chosen pivot below this asks for a fresh factorization before it is believed. */
   smallPivot: 1e-7,
   /**

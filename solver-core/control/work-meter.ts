@@ -1,6 +1,7 @@
 /**
- * Deterministic work units: what stands for time in a core without a clock. One unit is about one pass over one
- * nonzero in an inner loop; a million units take in the order of milliseconds.
+ * Deterministic work units: what stands for time in a core without a clock. One unit is about one nonzero handled in an
+ * inner loop. A million units took 5 to 10 ms in a warm process (benchmarks, Netlib), far longer in its first moments:
+ * callers who slice by time must measure as they go.
  */
 export class WorkMeter {
   private used = 0;

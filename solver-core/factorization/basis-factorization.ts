@@ -318,7 +318,7 @@ export class BasisFactorization {
       this.reached,
       hyperSparseReach * this.factors.rowCount,
     );
-    this.work += found >= 0 ? 2 * found : hyperSparseReach * this.factors.rowCount;
+    this.work += found >= 0 ? 2 * found : Math.ceil(hyperSparseReach * this.factors.rowCount);
     return found;
   }
 

@@ -38,10 +38,18 @@ export class DualRatioTest {
    * @returns entering variable, or −1: with every breakpoint passed the row stays infeasible
    */
   choose(row: ScatteredVector, sign: number, infeasibility: number, primalTolerance: number): number {
+    for (const pivotTolerance of [tolerances.ratioTestPivot, tolerances.ratioTestLastPivot]) {
+      this.collectBreakpoints(row, sign, pivotTolerance);
+      const entering = this.passBreakpoints(row, infeasibility, primalTolerance);
+      if (entering >= 0) return entering;
+    }
+    return -1;
+  }
+
+  private passBreakpoints(row: ScatteredVector, infeasibility: number, primalTolerance: number): number {
     const { heap, passed, groupStart } = this;
     const slack = tolerances.harrisDualSlack;
     this.flipCount = 0;
-    this.collectBreakpoints(row, sign);
     if (heap.count === 0) return -1;
     const { lower, upper } = this.iterate.bounds;
     const d = this.iterate.reduced.value;
@@ -69,7 +77,7 @@ export class DualRatioTest {
     return this.chooseAmongGroups(groupCount, alpha, largestPivot);
   }
 
-  private collectBreakpoints(row: ScatteredVector, sign: number): void {
+  private collectBreakpoints(row: ScatteredVector, sign: number, pivotTolerance: number): void {
     const { heap } = this;
     const { status } = this.iterate.basis;
     const d = this.iterate.reduced.value;
@@ -81,13 +89,13 @@ export class DualRatioTest {
       const stands = status[variable];
       let step: number;
       if (stands === VariableStatus.atLower) {
-        if (entry < tolerances.ratioTestPivot) continue;
+        if (entry < pivotTolerance) continue;
         step = d[variable] / entry;
       } else if (stands === VariableStatus.atUpper) {
-        if (entry > -tolerances.ratioTestPivot) continue;
+        if (entry > -pivotTolerance) continue;
         step = d[variable] / entry;
       } else {
-        if (entry < tolerances.ratioTestPivot && entry > -tolerances.ratioTestPivot) continue;
+        if (entry < pivotTolerance && entry > -pivotTolerance) continue;
         step = 0; // free: its reduced cost must stay 0
       }
       heap.push(variable, step > 0 ? step : 0);

@@ -40,16 +40,31 @@ export class PrimalRatioTest {
     feasibilityTolerance: number,
     usesFirstBound: boolean,
   ): PrimalRatioOutcome {
+    const slack = usesFirstBound ? 0 : feasibilityTolerance;
+    for (const pivotTolerance of [tolerances.ratioTestPivot, tolerances.ratioTestLastPivot]) {
+      const outcome = this.firstBound(entering, column, direction, slack, usesFirstBound, pivotTolerance);
+      if (outcome !== 'unbounded') return outcome;
+    }
+    return 'unbounded';
+  }
+
+  private firstBound(
+    entering: number,
+    column: ScatteredVector,
+    direction: number,
+    slack: number,
+    usesFirstBound: boolean,
+    pivotTolerance: number,
+  ): PrimalRatioOutcome {
     const { basis, bounds, primal } = this.iterate;
     const { basicVariable } = basis;
     const { lower, upper } = bounds;
     const z = primal.value;
     const { index, value, count } = column;
-    const slack = usesFirstBound ? 0 : feasibilityTolerance;
     let reach = Infinity;
     for (let k = 0; k < count; k++) {
       const rate = -direction * value[index[k]];
-      if (rate < tolerances.ratioTestPivot && rate > -tolerances.ratioTestPivot) continue;
+      if (rate < pivotTolerance && rate > -pivotTolerance) continue;
       const variable = basicVariable[index[k]];
       const room = rate > 0 ? upper[variable] - z[variable] : lower[variable] - z[variable];
       const step = (rate > 0 ? Math.max(room, 0) + slack : Math.min(room, 0) - slack) / rate;
@@ -68,7 +83,7 @@ export class PrimalRatioTest {
       const position = index[k];
       const rate = -direction * value[position];
       const size = Math.abs(rate);
-      if (size < tolerances.ratioTestPivot) continue;
+      if (size < pivotTolerance) continue;
       const variable = basicVariable[position];
       const room = rate > 0 ? upper[variable] - z[variable] : lower[variable] - z[variable];
       if (Math.max(0, room / rate) > reach) continue;
