@@ -11,6 +11,7 @@
  */
 import { CellError } from '../sheet/cell-value';
 import type { CellRange } from '../sheet/cell-range';
+import type { DefinedName } from '../sheet/defined-name';
 import type { FormulaNode, ParsedFormula } from '../formula/formula-syntax';
 import { isReferenceFault, rangeOfNode, rangeOfTable, type ReferenceFault } from '../formula/static-ranges';
 import {
@@ -26,7 +27,8 @@ import type { Area } from './evaluated-value';
 
 /** Ranges of more cells than this are nodes of their own, shared by all formulas that refer to them. */
 const directRangeCells = 8;
-const maximumNameDepth = 32;
+/** Names behind one formula; names that lead to names are walked by calls. */
+const maximumNameCount = 500;
 
 /** Functions whose value changes without any cell changing. */
 const volatileFunctions = new Set(['TODAY', 'NOW']);
@@ -46,8 +48,10 @@ export class GraphNode {
   next = 0;
   /** Valid once visited. */
   dependsOnInputs = false;
-  /** TODAY, NOW or an uncertain reference is among what it builds on. */
+  /** TODAY or NOW is among what it builds on. */
   isVolatile = false;
+  /** So is a formula whose references cannot all be told beforehand, or that cannot be read. */
+  isUncertain = false;
   precedents: readonly GraphNode[] = none;
   /** Inputs it refers to itself. */
   inputs: readonly InputCell[] = none;
@@ -89,7 +93,7 @@ export class DependencyGraph {
   /** Whether the stored value does not do: what the cell builds on may have changed, or nothing is stored. */
   needsEvaluation(cell: FormulaCell): boolean {
     const node = this.visit(cell);
-    return node.dependsOnInputs || node.isVolatile || cell.cell.value === undefined;
+    return node.dependsOnInputs || node.isVolatile || node.isUncertain || cell.cell.value === undefined;
   }
 
   private nodeOf(cell: FormulaCell): GraphNode {
@@ -126,6 +130,7 @@ export class DependencyGraph {
       for (const precedent of precedents) {
         node.dependsOnInputs ||= precedent.dependsOnInputs;
         node.isVolatile ||= precedent.isVolatile;
+        node.isUncertain ||= precedent.isUncertain;
         if (precedent.isOnStack && precedent.lowest < node.lowest) {
           node.lowest = precedent.lowest;
         }
@@ -143,19 +148,26 @@ export class DependencyGraph {
   private closeComponent(root: GraphNode, stack: GraphNode[]): void {
     if (stack[stack.length - 1] === root) {
       stack.pop();
-      this.close(root, root.dependsOnInputs, root.isVolatile);
+      this.close(root, root);
       return;
     }
-    const members = stack.splice(stack.lastIndexOf(root));
-    const dependsOnInputs = members.some((member) => member.dependsOnInputs);
-    const isVolatile = members.some((member) => member.isVolatile);
-    members.reverse().forEach((member) => this.close(member, dependsOnInputs, isVolatile));
+    const members = stack.splice(stack.lastIndexOf(root)).reverse();
+    const flags = {
+      dependsOnInputs: members.some((member) => member.dependsOnInputs),
+      isVolatile: members.some((member) => member.isVolatile),
+      isUncertain: members.some((member) => member.isUncertain),
+    };
+    members.forEach((member) => this.close(member, flags));
   }
 
-  private close(member: GraphNode, dependsOnInputs: boolean, isVolatile: boolean): void {
+  private close(
+    member: GraphNode,
+    flags: Pick<GraphNode, 'dependsOnInputs' | 'isVolatile' | 'isUncertain'>,
+  ): void {
     member.isOnStack = false;
-    member.dependsOnInputs = dependsOnInputs;
-    member.isVolatile = isVolatile;
+    member.dependsOnInputs = flags.dependsOnInputs;
+    member.isVolatile = flags.isVolatile;
+    member.isUncertain = flags.isUncertain;
     if (member.cell !== undefined) {
       this.order.push(member.cell);
     }
@@ -167,7 +179,9 @@ export class DependencyGraph {
     if (node.cell !== undefined) {
       const { formula } = node.cell;
       if (formula.kind === 'formula') {
-        this.collect(node, node.cell, formula, 0, precedents, inputs);
+        this.collect(node, node.cell, formula, new Set(), precedents, inputs);
+      } else {
+        node.isUncertain = true;
       }
     } else if (node.area !== undefined) {
       if (node.before !== undefined) {
@@ -190,15 +204,16 @@ export class DependencyGraph {
     node: GraphNode,
     cell: FormulaCell,
     formula: ParsedFormula,
-    nameDepth: number,
+    seenNames: Set<DefinedName>,
     precedents: GraphNode[],
     inputs: InputCell[],
   ): void {
-    if (
-      formula.functionNames.length > 0 &&
-      formula.functionNames.some((name) => volatileFunctions.has(name))
-    ) {
-      node.isVolatile = true;
+    for (const name of formula.functionNames) {
+      if (volatileFunctions.has(name)) {
+        node.isVolatile = true;
+      }
+      // A name that stands for a LAMBDA is called like a function, and its body may refer to anything.
+      this.collectNamed(node, cell, name, cell.grid.name, seenNames, precedents, inputs);
     }
     for (const reference of formula.references) {
       switch (reference.kind) {
@@ -226,22 +241,23 @@ export class DependencyGraph {
             this.addRange(range, precedents, inputs);
           }
           break;
-        case 'name': {
-          const named = this.namedFormula(reference.name, reference.sheet ?? cell.grid.name);
-          if (named !== undefined && nameDepth < maximumNameDepth) {
-            this.collect(node, cell, named, nameDepth + 1, precedents, inputs);
-          } else if (named === undefined && this.grid.index.table(reference.name) !== undefined) {
-            const table = { kind: 'table', table: reference.name, columns: [], sections: [] } as const;
-            this.addRange(rangeOfTable(table, this.grid.index, cell.address), precedents, inputs);
-          }
+        case 'name':
+          this.collectNamed(
+            node,
+            cell,
+            reference.name,
+            reference.sheet ?? cell.grid.name,
+            seenNames,
+            precedents,
+            inputs,
+          );
           break;
-        }
         case 'binary':
         case 'unary':
         case 'call': {
           const areas = this.resolveComputed(cell, reference);
           if (areas === undefined) {
-            node.isVolatile = true;
+            node.isUncertain = true;
           } else {
             areas.forEach((area) => this.addArea(area, precedents, inputs));
           }
@@ -252,10 +268,33 @@ export class DependencyGraph {
     }
   }
 
-  private namedFormula(name: string, sheet: string): ParsedFormula | undefined {
+  /** What a defined name, or a table called by its bare name, refers to; nothing where there is none. */
+  private collectNamed(
+    node: GraphNode,
+    cell: FormulaCell,
+    name: string,
+    sheet: string,
+    seenNames: Set<DefinedName>,
+    precedents: GraphNode[],
+    inputs: InputCell[],
+  ): void {
     const definedName = this.grid.index.definedName(name, sheet);
-    const parsed = definedName && this.grid.formulas.parse(definedName.formula, { row: 0, column: 0 });
-    return parsed?.kind === 'formula' ? parsed : undefined;
+    if (definedName !== undefined) {
+      // A name says the same wherever in this formula it is met.
+      if (seenNames.has(definedName)) {
+        return;
+      }
+      seenNames.add(definedName);
+      const named = this.grid.formulas.parse(definedName.formula, { row: 0, column: 0 });
+      if (named.kind === 'syntax-issue' || seenNames.size > maximumNameCount) {
+        node.isUncertain = true;
+      } else {
+        this.collect(node, cell, named, seenNames, precedents, inputs);
+      }
+    } else if (this.grid.index.table(name) !== undefined) {
+      const table = { kind: 'table', table: name, columns: [], sections: [] } as const;
+      this.addRange(rangeOfTable(table, this.grid.index, cell.address), precedents, inputs);
+    }
   }
 
   private sheetsBetween(first: string, last: string): string[] {

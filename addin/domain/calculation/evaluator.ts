@@ -52,6 +52,8 @@ import type { FunctionContext, WorksheetFunction } from './worksheet-function';
 
 /** Names that lead to names, and lambdas that call lambdas. */
 const maximumScopeDepth = 200;
+/** Names and lambdas followed for one cell: names that each mention another twice would go on for ever. */
+const maximumScopeEntries = 1_000_000;
 
 /** What became of a formula cell. */
 export type CellOutcome =
@@ -96,6 +98,7 @@ export class Evaluator implements FunctionContext {
   private home: SheetGrid | undefined;
   private scope: Scope | undefined;
   private scopeDepth = 0;
+  private scopeEntries = 0;
   private takesOneValue = false;
 
   constructor(
@@ -251,6 +254,7 @@ export class Evaluator implements FunctionContext {
     this.column = cell.column;
     this.scope = undefined;
     this.scopeDepth = 0;
+    this.scopeEntries = 0;
     this.takesOneValue = false;
   }
 
@@ -569,7 +573,7 @@ export class Evaluator implements FunctionContext {
   }
 
   private inScope<T>(scope: Scope | undefined, work: () => T): T {
-    if (++this.scopeDepth > maximumScopeDepth) {
+    if (++this.scopeDepth > maximumScopeDepth || ++this.scopeEntries > maximumScopeEntries) {
       throw new EvaluationRefusal({ code: 'too-deep' });
     }
     const outer = this.scope;

@@ -20,8 +20,12 @@ export interface RecalculatedCell {
 export type NotRecalculatedReason = RefusalReason['code'] | 'builds-on-such-a-cell';
 
 export interface Recalculation {
-  /** Every formula cell, and every cell filled by an array formula, that depends on a changed cell. */
+  /**
+   * Every formula cell, and every cell filled by an array formula, that depends on a changed cell, or of which that
+   * cannot be told without working it out.
+   */
   readonly values: readonly RecalculatedCell[];
+  /** A formula that cannot be read at all is among these: it may depend on anything. */
   readonly notRecalculated: readonly { readonly cell: CellAddress; readonly reason: NotRecalculatedReason }[];
 }
 
@@ -60,7 +64,8 @@ export function recalculate(
   for (const cell of graph.order) {
     // A changed cell that held a formula is given, not calculated.
     const isGiven = cell.grid.at(cell.row, cell.column) !== cell;
-    if (!graph.visit(cell).dependsOnInputs || isGiven) {
+    const node = graph.visit(cell);
+    if (isGiven || !(node.dependsOnInputs || node.isUncertain)) {
       continue;
     }
     const outcome = evaluator.outcomeOf(cell);

@@ -3,6 +3,7 @@
  */
 import type { CellAddress } from '../sheet/cell-address';
 import type { CellRange } from '../sheet/cell-range';
+import type { DefinedName } from '../sheet/defined-name';
 import type { WorkbookSnapshot } from '../sheet/sheet-snapshot';
 import { formulaCacheOf, type FormulaCache } from './formula-cache';
 import type { FormulaNode, ParsedFormula } from './formula-syntax';
@@ -16,7 +17,8 @@ export interface FormulaReferences {
   readonly hasComputedRanges: boolean;
 }
 
-const maximumNameDepth = 32;
+/** Names behind one formula; names that lead to names are walked by calls. */
+const maximumNameCount = 500;
 
 /** @param text without the leading `=`; a formula that cannot be read refers to nothing */
 export function referencesOfFormula(
@@ -29,7 +31,7 @@ export function referencesOfFormula(
   const parsed = cache.parse(text, home);
   const hasComputedRanges =
     parsed.kind === 'formula' &&
-    collectRanges(parsed, workbookIndexOf(workbook), cache, home, 0, (range) => ranges.push(range));
+    collectRanges(parsed, workbookIndexOf(workbook), cache, home, new Set(), (range) => ranges.push(range));
   return { ranges, hasComputedRanges };
 }
 
@@ -40,7 +42,7 @@ export function forEachRangeReferredTo(workbook: WorkbookSnapshot, visit: (range
   const visitFormula = (text: string, home: CellAddress): void => {
     const parsed = cache.parse(text, home);
     if (parsed.kind === 'formula') {
-      collectRanges(parsed, index, cache, home, 0, visit);
+      collectRanges(parsed, index, cache, home, new Set(), visit);
     }
   };
   for (const sheet of workbook.sheets) {
@@ -61,7 +63,7 @@ function collectRanges(
   index: WorkbookIndex,
   cache: FormulaCache,
   home: CellAddress,
-  depth: number,
+  seenNames: Set<DefinedName>,
   visit: (range: CellRange) => void,
 ): boolean {
   let hasComputedRanges = false;
@@ -79,12 +81,13 @@ function collectRanges(
       }
       case 'name': {
         const definedName = index.definedName(node.name, node.sheet ?? home.sheet);
-        if (definedName === undefined || depth >= maximumNameDepth) {
+        if (definedName === undefined || seenNames.has(definedName) || seenNames.size >= maximumNameCount) {
           return;
         }
+        seenNames.add(definedName);
         const named = cache.parse(definedName.formula, { row: 0, column: 0 });
         if (named.kind === 'formula') {
-          hasComputedRanges = collectRanges(named, index, cache, home, depth + 1, visit) || hasComputedRanges;
+          hasComputedRanges = collectRanges(named, index, cache, home, seenNames, visit) || hasComputedRanges;
         }
         return;
       }

@@ -11,8 +11,8 @@ import type { RangeResolution } from './range-resolution';
 import { isReferenceFault, rangeOfNode, rangeOfTable, type ReferenceFault } from './static-ranges';
 import { workbookIndexOf, type WorkbookIndex } from './workbook-index';
 
-/** Names that lead to names: more than this is a name that leads back to itself. */
-const maximumNameDepth = 32;
+/** Names that lead to names, in all: more than this is a name that leads back to itself. */
+const maximumNames = 500;
 
 /** Functions that can give a range; which one, only calculation tells. */
 const rangeFunctions = new Set([
@@ -34,7 +34,8 @@ interface Lookup {
   readonly index: WorkbookIndex;
   readonly home: CellAddress;
   readonly hasHome: boolean;
-  readonly depth: number;
+  /** Names followed so far. */
+  readonly followed: { count: number };
 }
 
 /** Relative references in a name are taken as they are written, that is as seen from A1. */
@@ -44,7 +45,7 @@ export function resolveName(workbook: WorkbookSnapshot, definedName: DefinedName
     index: workbookIndexOf(workbook),
     home: { sheet: definedName.scope ?? '', row: 0, column: 0 },
     hasHome: definedName.scope !== null,
-    depth: 0,
+    followed: { count: 0 },
   });
 }
 
@@ -62,7 +63,7 @@ export function resolveReferenceText(
     index: workbookIndexOf(workbook),
     home: { sheet: homeSheet ?? '', row: 0, column: 0 },
     hasHome: homeSheet !== null,
-    depth: 0,
+    followed: { count: 0 },
   });
 }
 
@@ -124,14 +125,13 @@ function resolveNameText(name: string, sheet: string | null, lookup: Lookup): Ra
   const from = sheet ?? (lookup.hasHome ? lookup.home.sheet : null);
   const definedName = index.definedName(name, from);
   if (definedName !== undefined) {
-    if (lookup.depth >= maximumNameDepth) {
+    if (++lookup.followed.count > maximumNames) {
       return { kind: 'not-a-range' };
     }
     return resolveText(definedName.formula, {
       ...lookup,
       home: { sheet: definedName.scope ?? '', row: 0, column: 0 },
       hasHome: definedName.scope !== null,
-      depth: lookup.depth + 1,
     });
   }
   if (index.table(name) !== undefined) {

@@ -255,7 +255,7 @@ class Linearizer {
       return false;
     }
     const node = this.graph.visit(cell);
-    if (node.dependsOnInputs || !node.isVolatile) {
+    if (node.dependsOnInputs || !node.isUncertain) {
       return node.dependsOnInputs;
     }
     // References that could not be told beforehand: what came of the formula tells.

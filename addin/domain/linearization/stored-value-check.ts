@@ -36,7 +36,7 @@ export class StoredValueCheck {
   check(cell: FormulaCell, value: Scalar | Matrix): void {
     const node = this.graph.visit(cell);
     const stored = cell.cell.value;
-    if (!node.dependsOnInputs || node.isVolatile || stored === undefined) {
+    if (!node.dependsOnInputs || node.isVolatile || node.isUncertain || stored === undefined) {
       return;
     }
     const first = value instanceof Matrix ? value.values[0] : value;

@@ -138,6 +138,22 @@ it('typed references are resolved from the sheet they are typed on', () => {
   expect(resolveReferenceText(workbook, 'Plain', 'Plan')).toMatchObject({ ranges: [{ left: 25 }] });
 });
 
+it('names that each mention another twice are given up', () => {
+  const doubling = Object.fromEntries(
+    Array.from({ length: 60 }, (_name, at) => [
+      `Step${at}x`,
+      at === 0 ? 'Plan!$A$1' : `Step${at - 1}x,Step${at - 1}x`,
+    ]),
+  );
+  const bomb = MemoryWorkbook.of({
+    sheets: { Plan: { A1: 1 } },
+    names: doubling,
+  }).snapshot();
+
+  expect(resolveName(bomb, bomb.names[59]).kind).toBe('not-a-range');
+  expect(referencesOfFormula(bomb, 'Step59x', { sheet: 'Plan', row: 0, column: 1 }).ranges).toHaveLength(1);
+});
+
 describe('references of formulas', () => {
   const home = { sheet: 'Costs', row: 1, column: 3 };
 

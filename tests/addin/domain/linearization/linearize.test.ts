@@ -401,6 +401,34 @@ describe('dependence on decisions', () => {
   });
 });
 
+describe('what refers to decisions in a roundabout way is not taken by its stored value', () => {
+  it.each([
+    ['a lambda called by its name', 'Priced(2)', [0, 2, 0, 0]],
+    ['a lambda within a lambda', 'Doubled(3)', [0, 6, 0, 0]],
+    ['a reference from a text within LET', 'LET(n,2,INDIRECT("A"&n))', [0, 0, 1, 0]],
+    ['a range that is moved', 'SUM(OFFSET(C1,0,-2,2,1))', [0, 1, 1, 0]],
+    ['a range between two found cells', 'SUM(INDEX(A:A,1):INDEX(A:A,2))', [0, 1, 1, 0]],
+  ] as const)('%s', (_what, formula, expected) => {
+    const { readings } = read({ D1: { formula, value: 12345 }, D2: '=D1' }, ['D2'], {
+      names: { Priced: 'LAMBDA(x,x*Plan!$A$1)', Doubled: 'LAMBDA(y,2*Priced(y))' },
+    });
+    const [reading] = readings;
+    expect(reading.kind).toBe('affine');
+    const { form } = reading as Extract<typeof reading, { kind: 'affine' }>;
+    const dense = [form.constant, 0, 0, 0];
+    form.variables.forEach((variable, at) => (dense[variable + 1] = form.coefficients[at]));
+    expect(dense).toEqual(expected);
+  });
+
+  it('a formula that cannot be read is refused though a value is stored beside it', () => {
+    const { readings } = read({ D1: { formula: 'A1*', value: 5 }, D2: '=D1+1' }, ['D2']);
+    expect(readings[0]).toMatchObject({
+      kind: 'refused',
+      issues: [{ code: 'formula-syntax', cell: cell('D1') }],
+    });
+  });
+});
+
 describe('circles', () => {
   it('are told with their cells, once, wherever they are met', () => {
     const { readings } = read({ D1: '=D3+A1', D2: '=D1*2', D3: '=D2-1', D4: '=D3' }, [
@@ -433,6 +461,17 @@ describe('circles', () => {
 
   it('names that lead to themselves end', () => {
     const { readings } = read({ D1: '=A1+Loop' }, ['D1'], { names: { Loop: 'Loop+1' } });
+    expect(readings[0]).toMatchObject({ issues: [{ code: 'too-deep' }] });
+  });
+
+  it('names that each mention another twice end', () => {
+    const names = Object.fromEntries(
+      Array.from({ length: 60 }, (_name, at) => [
+        `Step${at}x`,
+        at === 0 ? '1' : `Step${at - 1}x+Step${at - 1}x`,
+      ]),
+    );
+    const { readings } = read({ D1: '=A1+Step59x' }, ['D1'], { names });
     expect(readings[0]).toMatchObject({ issues: [{ code: 'too-deep' }] });
   });
 
