@@ -79,6 +79,11 @@ export const tolerances = {
    */
   rayDrop: 1e-12,
   /**
+   * Rays, simplex space: components below this share of the largest are tried as exact zeros, one level after the
+   * other. Reason: a ray may be any vector; noise of solves in components that should be 0 is no part of the proof.
+   */
+  rayDrops: [0, 1e-14, 1e-11, 1e-9],
+  /**
    * Farkas rays, stated space: are the two sides apart? Margin relative to the largest term of the two sums.
    * Reason: the sums are compensated, their terms are doubles; a few units in the last place leave no doubt.
    */

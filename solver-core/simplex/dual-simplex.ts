@@ -12,14 +12,15 @@ import { chooseLeavingRow } from './dual-pricing';
 import { DualRatioTest } from './dual-ratio-test';
 import { DualSteepestEdge } from './dual-steepest-edge';
 import type { LoopEnd } from './loop-end';
+import { refinedRowSolve } from './refine-solution';
 import type { SimplexIterate } from './simplex-iterate';
 import { tableauRow } from './tableau-row';
 
 export class DualSimplex {
   readonly weights: DualSteepestEdge;
-  /** After 'infeasible': ρ = B⁻ᵀ e_r of the row that cannot be made feasible, with the sign of the ratio test. */
-  readonly infeasibleRow: ScatteredVector;
-  infeasibleSign = 0;
+  /** After 'infeasible': the position that cannot be made feasible, with the sign of the ratio test. */
+  private infeasiblePosition = -1;
+  private infeasibleSign = 0;
   private readonly ratioTest: DualRatioTest;
   private readonly rho: ScatteredVector;
   private readonly row: ScatteredVector;
@@ -35,7 +36,6 @@ export class DualSimplex {
     this.weights = new DualSteepestEdge(iterate.form, iterate.basis);
     this.ratioTest = new DualRatioTest(iterate);
     this.rho = new ScatteredVector(rowCount);
-    this.infeasibleRow = new ScatteredVector(rowCount);
     this.row = new ScatteredVector(variableCount);
     this.column = new ScatteredVector(rowCount);
     this.tau = new ScatteredVector(rowCount);
@@ -62,6 +62,13 @@ export class DualSimplex {
       const end = this.pivotOn(position, meter);
       if (end !== undefined) return end;
     }
+  }
+
+  /** After 'infeasible': ± B⁻ᵀ e_r, refined, length m: a Farkas ray as solve-result.ts defines it. */
+  infeasibleRay(): Float64Array {
+    const unit = new Float64Array(this.iterate.form.rowCount);
+    unit[this.infeasiblePosition] = this.infeasibleSign;
+    return refinedRowSolve(this.iterate, unit);
   }
 
   private renew(): void {
@@ -110,7 +117,7 @@ export class DualSimplex {
         this.needsFactorization = true;
         return undefined;
       }
-      this.infeasibleRow.copyFrom(rho);
+      this.infeasiblePosition = position;
       this.infeasibleSign = sign;
       return 'infeasible';
     }

@@ -11,6 +11,7 @@ import { DevexWeights } from './devex-weights';
 import type { LoopEnd } from './loop-end';
 import { chooseEnteringVariable, chooseFirstEnteringVariable } from './primal-pricing';
 import { PrimalRatioTest } from './primal-ratio-test';
+import { refinedColumnSolve, refinedMultipliers } from './refine-solution';
 import type { SimplexIterate } from './simplex-iterate';
 import { tableauRow } from './tableau-row';
 
@@ -18,10 +19,10 @@ import { tableauRow } from './tableau-row';
 const stallSteps = 200;
 
 export class PrimalSimplex {
-  /** After 'unbounded': B⁻¹ a_entering, and the way the entering variable moves. */
-  readonly column: ScatteredVector;
-  entering = -1;
-  direction = 1;
+  private readonly column: ScatteredVector;
+  /** After 'unbounded': the entering variable and the way it moves. */
+  private entering = -1;
+  private direction = 1;
   /** Least-number rule in both choices: slow, but it cannot cycle. */
   usesLeastNumberRule = false;
   /** Whether stalls are reported; off when nothing more can be done about them. */
@@ -290,30 +291,19 @@ export class PrimalSimplex {
     this.barredCount = 0;
   }
 
-  /** Where the entering and basic variables go per unit of an unbounded step, over all variables, length n + m. */
+  /** After 'unbounded': where each variable goes per unit of the entering one, refined, length n + m. */
   unboundedDirection(): Float64Array {
-    const { iterate, column, entering, direction } = this;
+    const { iterate, entering, direction } = this;
     const ray = new Float64Array(iterate.form.variableCount);
     ray[entering] = direction;
-    for (let k = 0; k < column.count; k++) {
-      const position = column.index[k];
-      ray[iterate.basis.basicVariable[position]] = -direction * column.value[position];
-    }
+    refinedColumnSolve(iterate, entering).forEach((rate, position) => {
+      ray[iterate.basis.basicVariable[position]] = -direction * rate;
+    });
     return ray;
   }
 
-  /** After 'infeasible': B⁻ᵀ c_B of phase one, length m: a Farkas ray as solve-result.ts defines it. */
+  /** After 'infeasible': B⁻ᵀ c_B of phase one, refined, length m: a Farkas ray as solve-result.ts defines it. */
   infeasibleRay(): Float64Array {
-    const { iterate, costRow } = this;
-    const { cost } = iterate.costs;
-    costRow.clear();
-    for (let position = 0; position < iterate.form.rowCount; position++) {
-      costRow.value[position] = cost[iterate.basis.basicVariable[position]];
-    }
-    costRow.count = -1;
-    iterate.factorization.btran(costRow);
-    const ray = costRow.value.slice();
-    costRow.clear();
-    return ray;
+    return refinedMultipliers(this.iterate);
   }
 }

@@ -159,12 +159,7 @@ export class SimplexSolver {
 
   private afterDual(end: LoopEnd): SimplexEnd | undefined {
     const { iterate, settings } = this;
-    if (end === 'infeasible') {
-      const ray = this.dual.infeasibleRow.value.slice();
-      const sign = this.dual.infeasibleSign;
-      for (let row = 0; row < ray.length; row++) ray[row] *= sign;
-      return { kind: 'infeasible', ray };
-    }
+    if (end === 'infeasible') return { kind: 'infeasible', ray: this.dual.infeasibleRay() };
     if (iterate.costs.kind !== 'stated') {
       iterate.costs.restore();
       iterate.reduced.recompute(iterate.factorization);

@@ -203,18 +203,22 @@ export class ContinuousSolve {
   }
 
   private judgeInfeasible(simplexRay: Float64Array, meter: WorkMeter): SolveResult | undefined {
-    const ray = this.provenFarkasRay(this.space.statedFarkasRay(simplexRay));
-    if (ray !== undefined) return { status: 'infeasible', ray, ...this.effort(meter) };
+    for (const share of tolerances.rayDrops) {
+      const ray = this.provenFarkasRay(this.space.statedFarkasRay(withoutSmall(simplexRay, share)));
+      if (ray !== undefined) return { status: 'infeasible', ray, ...this.effort(meter) };
+    }
     this.keepImprecise('a proof of infeasibility did not hold on the stated problem', meter);
     return undefined;
   }
 
   private judgeUnbounded(direction: Float64Array, meter: WorkMeter): SolveResult | undefined {
     const { x } = this.space.statedIterate(this.solver.iterate).solution;
-    const ray = this.space.statedUnboundedRay(direction);
-    for (const candidate of [ray, withoutBlockedComponents(this.problem, ray)]) {
-      if (verifyUnboundedRay(this.problem, x, candidate).isProof) {
-        return { status: 'unbounded', x, ray: candidate, ...this.effort(meter) };
+    for (const share of tolerances.rayDrops) {
+      const ray = this.space.statedUnboundedRay(withoutSmall(direction, share));
+      for (const candidate of [ray, withoutBlockedComponents(this.problem, ray)]) {
+        if (verifyUnboundedRay(this.problem, x, candidate).isProof) {
+          return { status: 'unbounded', x, ray: candidate, ...this.effort(meter) };
+        }
       }
     }
     this.keepImprecise('an unbounded direction did not hold on the stated problem', meter);
@@ -250,4 +254,10 @@ export class ContinuousSolve {
   private imprecise(meter: WorkMeter): SolveResult {
     return { ...this.bestImprecise!, ...this.effort(meter) };
   }
+}
+
+/** A copy with 0 in place of components below a share of the largest magnitude. */
+function withoutSmall(ray: Float64Array, share: number): Float64Array {
+  const least = share * ray.reduce((largest, entry) => Math.max(largest, Math.abs(entry)), 0);
+  return ray.map((entry) => (Math.abs(entry) < least ? 0 : entry));
 }
