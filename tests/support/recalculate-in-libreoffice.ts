@@ -23,10 +23,15 @@ export function storedFormulaValues(workbook: Uint8Array): FormulaValues {
  * To be called in a test that `itNeeds('libreOffice', …)` guards, with two minutes of time.
  */
 export function recalculateInLibreOffice(workbook: Uint8Array): FormulaValues {
+  return storedFormulaValues(saveAnewInLibreOffice(withoutStoredValues(workbook)));
+}
+
+/** The workbook opened and saved by LibreOffice. To be guarded and timed in the same way. */
+export function saveAnewInLibreOffice(workbook: Uint8Array): Uint8Array {
   const folder = mkdtempSync(path.join(tmpdir(), 'planrow-recalculation-'));
   try {
     const source = path.join(folder, 'workbook.xlsx');
-    writeFileSync(source, withoutStoredValues(workbook));
+    writeFileSync(source, workbook);
     execFileSync(
       pathOfNeed('libreOffice'),
       [
@@ -40,7 +45,7 @@ export function recalculateInLibreOffice(workbook: Uint8Array): FormulaValues {
       ],
       { stdio: 'ignore', timeout: 110_000 },
     );
-    return storedFormulaValues(readFileSync(path.join(folder, 'out', 'workbook.xlsx')));
+    return readFileSync(path.join(folder, 'out', 'workbook.xlsx'));
   } finally {
     rmSync(folder, { recursive: true, force: true });
   }

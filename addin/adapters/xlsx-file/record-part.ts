@@ -15,7 +15,12 @@ export async function findRecord(
   parts: PackageParts,
   workbookPart: string,
 ): Promise<{ part: string; json: string } | undefined> {
-  for (const { kind, target } of await parts.relationshipsOf(workbookPart)) {
+  // Some programs hang custom parts on the package itself when they save a workbook anew.
+  const relationships = [
+    ...(await parts.relationshipsOf(workbookPart)),
+    ...(await parts.relationshipsOf('')),
+  ];
+  for (const { kind, target } of relationships) {
     if (kind !== 'customXml' || target === undefined || !parts.has(target)) continue;
     const root = await customXmlRoot(parts, target);
     if (root?.local === 'record' && root.tag.uri === recordNamespace)

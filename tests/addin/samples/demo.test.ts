@@ -2,7 +2,11 @@
 import { mkdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { checkoutFolder, itNeeds } from '../../support/needs';
-import { recalculateInLibreOffice, storedFormulaValues } from '../../support/recalculate-in-libreoffice';
+import {
+  recalculateInLibreOffice,
+  saveAnewInLibreOffice,
+  storedFormulaValues,
+} from '../../support/recalculate-in-libreoffice';
 import { WorkFolder } from '../../support/run-planrow';
 import { inspectZip } from '../../support/zip-inspector';
 
@@ -70,6 +74,21 @@ describe('the demo', () => {
         }
       });
       expect(Math.abs(Number(recalculated[0].get('B3')) - Number(json.objective))).toBeLessThan(1e-6);
+    },
+    120_000,
+  );
+
+  itNeeds(
+    'libreOffice',
+    'finds its result columns again in a workbook that LibreOffice has saved since, and refreshes them',
+    () => {
+      folder.run('solve', sample, '--out', 'first.xlsx');
+      folder.write('saved.xlsx', saveAnewInLibreOffice(folder.read('first.xlsx')));
+      const { json } = folder.runJson('solve', 'saved.xlsx', '--out', 'second.xlsx');
+      expect(json).toMatchObject({ status: 'optimal', issues: [] });
+      const { blocks } = json.written as { blocks: { name: string; cell: string }[] };
+      expect(blocks).toContainEqual({ name: 'Week.Optimum', cell: "'Week plan'!K7" });
+      expect(blocks).toContainEqual({ name: 'Week.DualValue', cell: "'Week plan'!L22" });
     },
     120_000,
   );
