@@ -6,7 +6,7 @@ import { readFile } from 'node:fs/promises';
 import { promisify } from 'node:util';
 import { gunzip } from 'node:zlib';
 import { MpsSyntaxError, readMpsWithWarnings, type LinearProgram, type SolveResult } from '#solver-core';
-import { planValuesOf } from '../use-cases/solve-model';
+import { planValuesOf } from '../domain/results-to-sheet/solved-values';
 import { sentenceOfFileFault, sentenceOfIntegerColumn } from '../wording/report-wording';
 import {
   errorEntry,

@@ -3,9 +3,9 @@
  */
 import type { ModelIssue } from '../domain/model-from-sheet/model-issue';
 import { readPlan, type ModelSize } from '../domain/model-from-sheet/read-plan';
+import { serialDateIn } from '../domain/sheet/serial-date';
 import type { Workbook } from '../ports/workbook';
 import { choosePlan, type NoSuchPlan } from './choose-plan';
-import { serialDateIn } from './serial-date';
 
 export interface CheckedModel {
   readonly kind: 'checked';

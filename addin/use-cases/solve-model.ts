@@ -4,18 +4,19 @@
  * Nothing is written unless there is a plan to write: an optimal one, the best one of a stopped solve, or one whose
  * optimality could not be shown to the last figure (imprecise, which the caller must say).
  */
-import type { Progress, SolutionValues, SolveOptions, SolveResult } from '#solver-core';
-import { buildLinearProgram, type BuiltProgram } from '../domain/model-from-sheet/build-linear-program';
+import type { Progress, SolveOptions, SolveResult } from '#solver-core';
+import { buildLinearProgram } from '../domain/model-from-sheet/build-linear-program';
 import type { ModelIssue } from '../domain/model-from-sheet/model-issue';
 import { readPlan, type ModelSize } from '../domain/model-from-sheet/read-plan';
 import type { SheetModel } from '../domain/model-from-sheet/sheet-model';
 import { planResultWrites, type ResultWrites } from '../domain/results-to-sheet/plan-result-writes';
 import { planSolutionOf, type PlanSolution } from '../domain/results-to-sheet/plan-solution';
 import type { ResultTexts } from '../domain/results-to-sheet/result-texts';
+import { planValuesOf, solvedValuesOf } from '../domain/results-to-sheet/solved-values';
+import { serialDateIn } from '../domain/sheet/serial-date';
 import type { RunningSolve, Solver } from '../ports/solver';
 import type { Workbook } from '../ports/workbook';
 import { choosePlan, type NoSuchPlan } from './choose-plan';
-import { serialDateIn } from './serial-date';
 
 export interface SolveModelRequest {
   readonly workbook: Workbook;
@@ -132,31 +133,6 @@ export async function solveModel(
     solution,
     writes,
     times: { read, build, solve, write: watch.lap() },
-  };
-}
-
-/** The plan that a result carries, or undefined. */
-export function planValuesOf(result: SolveResult): SolutionValues | undefined {
-  switch (result.status) {
-    case 'optimal':
-    case 'imprecise':
-      return result;
-    case 'stopped':
-      return result.best;
-    case 'infeasible':
-    case 'unbounded':
-      return undefined;
-  }
-}
-
-function solvedValuesOf(
-  built: BuiltProgram,
-  values: SolutionValues,
-): { values: number[]; reducedCosts: number[]; dualValues: number[] } {
-  return {
-    values: built.decisionColumns.map((column) => values.x[column]),
-    reducedCosts: built.decisionColumns.map((column) => values.reducedCosts[column]),
-    dualValues: built.constraintRows.flat().map((row) => values.rowDuals[row]),
   };
 }
 

@@ -89,6 +89,10 @@ const domainRooms: readonly Room[] = [
     ),
     mayImportTypesOf: [coreDoor],
   },
+  {
+    path: 'addin/domain/statement-to-sheet',
+    mayImport: addin('domain/sheet', 'domain/formula', 'domain/model-from-sheet', 'domain/results-to-sheet'),
+  },
 ];
 
 const faceRooms = addin('use-cases', 'ports', 'domain', 'wording');
@@ -112,9 +116,14 @@ const addinRooms: readonly Room[] = [
   },
   { path: 'addin/adapters/memory', mayImport: addin('ports', 'domain') },
   { path: 'addin/adapters/solver-thread', mayImport: [...addin('ports', 'domain', 'worker'), coreDoor] },
-  { path: 'addin/worker', mayImport: [...addin('domain'), coreDoor] },
+  { path: 'addin/worker', mayImport: [...addin('domain', 'wording'), coreDoor] },
   // Faces reach adapters through ports; only their composition roots, below, construct one.
-  { path: 'addin/pane', mayImport: faceRooms },
+  {
+    path: 'addin/pane',
+    mayImport: faceRooms,
+    mayImportTypesOf: [coreDoor],
+    packages: ['react', 'react-dom', '@fluentui/react-components'],
+  },
   { path: 'addin/commands', mayImport: faceRooms },
   {
     path: 'addin/command-line',

@@ -69,8 +69,12 @@ export function readWorkbookRecord(json: string | null): WorkbookRecord {
 
 /** The record as JSON text, with one plan's part renewed and the other plans' kept. */
 export function renewWorkbookRecord(record: WorkbookRecord, planName: string, plan: PlanRecord): string {
-  const plans = Object.fromEntries([...record, [planRecordKey(planName), plan]]);
-  return JSON.stringify({ version: recordVersion, plans });
+  return workbookRecordText(new Map([...record, [planRecordKey(planName), plan]]));
+}
+
+/** The record as JSON text. */
+export function workbookRecordText(record: WorkbookRecord): string {
+  return JSON.stringify({ version: recordVersion, plans: Object.fromEntries(record) });
 }
 
 /** Whether a cell still holds what was recorded. Nothing recorded equals only a blank cell. */
