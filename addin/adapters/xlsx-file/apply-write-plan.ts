@@ -19,7 +19,7 @@ import {
   type CellEdit,
   type PlannedEdits,
   type SheetEdits,
-} from './planned-edits';
+} from '../../ports/planned-edits';
 import type { OpenPackage } from './read-workbook';
 import { findRecord, newRecordParts, recordPropertiesType, recordText } from './record-part';
 import { readSurroundings } from './sheet-marks';

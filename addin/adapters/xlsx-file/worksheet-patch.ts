@@ -15,7 +15,7 @@ import type { CellRange } from '../../domain/sheet/cell-range';
 import { CellError, type CellValue } from '../../domain/sheet/cell-value';
 import type { TableSnapshot } from '../../domain/sheet/sheet-snapshot';
 import { WorkbookError } from '../../ports/workbook';
-import { nothingWritten, type CellEdit, type SheetEdits } from './planned-edits';
+import { nothingWritten, type CellEdit, type SheetEdits } from '../../ports/planned-edits';
 import { asOpenTag, withAttribute, withAttributes } from './start-tag';
 import { TextSplices } from './text-splices';
 import type { CellPlaceInText, WorksheetOutline } from './worksheet-outline';

@@ -21,10 +21,6 @@ export const xlsxLimits = {
   packingRatio: 300,
   /** Parts up to this size may be packed as densely as they like: they can do no harm. */
   bytesWithoutRatio: 8 * mebibyte,
-  /** Characters of a text in a cell: the spreadsheet program's own limit. */
-  cellTextLength: 32_767,
-  /** Characters of a formula: the spreadsheet program's own limit. */
-  formulaLength: 8_192,
   /** Elements inside one another. Real parts stay below 40. */
   elementDepth: 1_000,
 } as const;

@@ -1,17 +1,13 @@
 /**
  * A write plan sorted by what it touches: cells by sheet, widths, new sheets, names, the record. Writes to one cell
- * are drawn together in their order, so that each cell is changed once.
+ * are drawn together in their order, so that each cell is changed once. Every adapter begins with this, so that all
+ * refuse the same plans.
  */
-import { cellKey, formatCellAddress, type CellAddress } from '../../domain/sheet/cell-address';
-import type { CellValue } from '../../domain/sheet/cell-value';
-import type {
-  NameRemoval,
-  NameWrite,
-  WorkbookWrite,
-  WritePlan,
-} from '../../domain/results-to-sheet/write-plan';
-import { WorkbookError } from '../../ports/workbook';
-import { xlsxLimits } from './xlsx-limits';
+import { cellKey, formatCellAddress, type CellAddress } from '../domain/sheet/cell-address';
+import { cellLimits } from '../domain/sheet/cell-limits';
+import type { CellValue } from '../domain/sheet/cell-value';
+import type { NameRemoval, NameWrite, WorkbookWrite, WritePlan } from '../domain/results-to-sheet/write-plan';
+import { WorkbookError } from './workbook';
 
 export type ContentEdit =
   | { readonly kind: 'value'; readonly value: Exclude<CellValue, object> }
@@ -113,7 +109,7 @@ class EditPlanner implements PlannedEdits {
           throw this.wouldOverwrite(`${formatCellAddress(write.cell)} already holds a value`);
         }
         const formula = write.formula.replace(/^=/, '');
-        if (formula === '' || formula.length > xlsxLimits.formulaLength || hasIllegalCharacter(formula)) {
+        if (formula === '' || formula.length > cellLimits.formulaLength || hasIllegalCharacter(formula)) {
           throw this.notWritten(`the formula for ${formatCellAddress(write.cell)} cannot stand in a cell`);
         }
         this.refuseUnwritable(write.cell, write.value);
@@ -207,7 +203,7 @@ class EditPlanner implements PlannedEdits {
       !/^([A-Za-z]{1,3}[0-9]{1,7}|[Rr]([0-9]*([Cc][0-9]*)?)?|[Cc][0-9]*)$/.test(write.name);
     if (!isPossible) throw this.notWritten(`${write.name} cannot be a name in a workbook`);
     const formula = write.formula.replace(/^=/, '');
-    if (formula === '' || formula.length > xlsxLimits.formulaLength || hasIllegalCharacter(formula)) {
+    if (formula === '' || formula.length > cellLimits.formulaLength || hasIllegalCharacter(formula)) {
       throw this.notWritten(`the name ${write.name} cannot refer to what was asked`);
     }
     if (write.scope !== null && !this.exactNames.has(write.scope.toLowerCase())) {
@@ -220,7 +216,7 @@ class EditPlanner implements PlannedEdits {
     if (typeof value === 'number' && !Number.isFinite(value)) {
       throw this.notWritten(`${formatCellAddress(cell)} cannot hold ${value}`);
     }
-    if (typeof value === 'string' && value.length > xlsxLimits.cellTextLength) {
+    if (typeof value === 'string' && value.length > cellLimits.textLength) {
       throw this.notWritten(`the text for ${formatCellAddress(cell)} is longer than a cell can hold`);
     }
   }
