@@ -3,12 +3,10 @@
  * never turned into anything here: whoever asks for a plain value of it is refused.
  */
 import { CellError } from '../sheet/cell-value';
+import { significantDigits } from './decimal-rounding';
 import { isDependent, errorValue, type Scalar } from './evaluated-value';
 import { dependentValueRefusal, errorSignal } from './evaluation-refusal';
 import type { Amount } from './number-domain';
-
-/** Digits that a worksheet shows, and by which it compares: the last bits of a number are not looked at. */
-const significantDigits = 15;
 
 /**
  * A number, or one that depends on decisions. Blank is 0, TRUE is 1, a text that reads as a number is that number.
@@ -39,9 +37,10 @@ export function toNumber(value: Scalar): number {
   return amount;
 }
 
-/** A number without its fraction, toward zero, as functions take positions and counts. */
+/** A number without its fraction, toward zero, as functions take positions and counts: 7.999999999999999 is 8. */
 export function toInteger(value: Scalar): number {
-  return Math.trunc(toNumber(value));
+  const number = toNumber(value);
+  return Number.isInteger(number) ? number : Math.trunc(Number(number.toPrecision(significantDigits)));
 }
 
 /**

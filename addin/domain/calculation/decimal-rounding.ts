@@ -2,7 +2,7 @@
  * Rounding in decimal digits, as worksheets do: 2.675 is taken as written and not as the binary number just below it.
  */
 
-/** Digits by which worksheets round. */
+/** Digits that a worksheet shows, and by which it rounds and compares: the last bits of a number are not looked at. */
 export const significantDigits = 15;
 
 /** number × 10^places, exact in the decimal digits shown. */

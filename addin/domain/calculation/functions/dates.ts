@@ -3,6 +3,7 @@
  */
 import { readNumber, toInteger, toNumber, toText } from '../coercions';
 import { dateOfSerial, daysInMonth, serialOfDate, weekdayOfSerial, type CalendarDate } from '../calendar';
+import { significantDigits } from '../decimal-rounding';
 import { errorValue, type Scalar } from '../evaluated-value';
 import { errorSignal } from '../evaluation-refusal';
 import {
@@ -12,12 +13,17 @@ import {
   type FunctionTable,
 } from '../worksheet-function';
 
-function dateOf(value: Scalar, context: FunctionContext): CalendarDate {
+/** The day of a date or date and time. Times just short of midnight by rounding belong to the next day. */
+function dayOf(value: Scalar, context: FunctionContext): number {
   const serial =
     typeof value === 'string' && readNumber(value) === undefined
       ? serialOfText(value, context)
       : toNumber(value);
-  const date = dateOfSerial(serial, context.usesDates1904);
+  return Math.floor(Number(serial.toPrecision(significantDigits)));
+}
+
+function dateOf(value: Scalar, context: FunctionContext): CalendarDate {
+  const date = dateOfSerial(dayOf(value, context), context.usesDates1904);
   if (date === undefined) {
     throw errorSignal(errorValue.number);
   }
@@ -69,9 +75,8 @@ function firstWeekday(type: number): number | undefined {
 
 function weekday(value: Scalar, typeValue: Scalar | undefined, context: FunctionContext): Scalar {
   const type = typeValue === undefined ? 1 : toInteger(typeValue);
-  const serial = toNumber(value);
-  dateOf(serial, context);
-  const day = weekdayOfSerial(serial, context.usesDates1904);
+  dateOf(value, context);
+  const day = weekdayOfSerial(dayOf(value, context), context.usesDates1904);
   if (type === 3) {
     return (day + 6) % 7;
   }
@@ -94,8 +99,7 @@ function addMonths(value: Scalar, months: Scalar, toEnd: boolean, context: Funct
   return serial < 0 ? errorValue.number : serial;
 }
 
-function isoWeek(serial: number, context: FunctionContext): number {
-  const whole = Math.floor(serial);
+function isoWeek(whole: number, context: FunctionContext): number {
   // The week belongs to the year of its Thursday.
   const thursday = whole - ((weekdayOfSerial(whole, context.usesDates1904) + 6) % 7) + 3;
   const year = dateOfSerial(thursday, context.usesDates1904)!.year;
@@ -143,8 +147,8 @@ export const dates: FunctionTable = {
   WEEKDAY: scalarFunction(1, 2, ([value, type], context) => weekday(value, type, context)),
   WEEKNUM: scalarFunction(1, 2, ([value, typeValue], context) => {
     const type = typeValue === undefined ? 1 : toInteger(typeValue);
-    const serial = Math.floor(toNumber(value));
-    const { year } = dateOf(serial, context);
+    const serial = dayOf(value, context);
+    const { year } = dateOf(value, context);
     if (type === 21) {
       return isoWeek(serial, context);
     }
@@ -158,17 +162,17 @@ export const dates: FunctionTable = {
   }),
   ISOWEEKNUM: scalarFunction(1, 1, ([value], context) => {
     dateOf(value, context);
-    return isoWeek(toNumber(value), context);
+    return isoWeek(dayOf(value, context), context);
   }),
   EDATE: scalarFunction(2, 2, ([value, months], context) => addMonths(value, months, false, context)),
   EOMONTH: scalarFunction(2, 2, ([value, months], context) => addMonths(value, months, true, context)),
-  DAYS: scalarFunction(2, 2, ([last, first]) => Math.trunc(toNumber(last)) - Math.trunc(toNumber(first))),
+  DAYS: scalarFunction(2, 2, ([last, first], context) => dayOf(last, context) - dayOf(first, context)),
   NETWORKDAYS: generalFunction(2, 3, ([first, last, holidayDates], context) => {
     const holidays = new Set<number>();
     if (holidayDates !== undefined) {
-      context.forEachFilled(holidayDates, (value) => holidays.add(Math.floor(toNumber(value))));
+      context.forEachFilled(holidayDates, (value) => holidays.add(dayOf(value, context)));
     }
-    const [from, to] = [first, last].map((value) => Math.floor(toNumber(context.scalarOf(value))));
+    const [from, to] = [first, last].map((value) => dayOf(context.scalarOf(value), context));
     dateOf(from, context);
     dateOf(to, context);
     return workdaysBetween(from, to, holidays, context);

@@ -2,7 +2,7 @@
  * Questions about values. None of them may be asked of a number that depends on decisions, N apart.
  */
 import { CellError } from '../../sheet/cell-value';
-import { toNumber } from '../coercions';
+import { toInteger } from '../coercions';
 import { errorValue, isDependent, type Scalar } from '../evaluated-value';
 import { dependentValueRefusal } from '../evaluation-refusal';
 import { scalarFunction, type FunctionTable } from '../worksheet-function';
@@ -25,8 +25,8 @@ export const information: FunctionTable = {
   ISERROR: question((value) => value instanceof CellError),
   ISERR: question((value) => value instanceof CellError && value !== errorValue.notAvailable),
   ISNA: question((value) => value === errorValue.notAvailable),
-  ISEVEN: scalarFunction(1, 1, ([value]) => Math.trunc(toNumber(value)) % 2 === 0),
-  ISODD: scalarFunction(1, 1, ([value]) => Math.trunc(toNumber(value)) % 2 !== 0),
+  ISEVEN: scalarFunction(1, 1, ([value]) => toInteger(value) % 2 === 0),
+  ISODD: scalarFunction(1, 1, ([value]) => toInteger(value) % 2 !== 0),
   NA: scalarFunction(0, 0, () => errorValue.notAvailable),
   /** A number stays itself, also one that depends on decisions; TRUE is 1, everything else 0. */
   N: scalarFunction(1, 1, ([value]) => {
