@@ -89,7 +89,10 @@ export async function solveModel(
   }
   const planName = chosen.listing.name;
   const now = serialDateIn(snapshot, request.today);
-  const { model, size, issues } = readPlan(snapshot, planName, { now });
+  const { model, size, issues } = readPlan(snapshot, planName, {
+    now,
+    dropsLots: request.options.relax === true,
+  });
   if (model === null || size === null) {
     return {
       kind: 'invalid',

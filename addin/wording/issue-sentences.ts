@@ -69,6 +69,7 @@ export function sentenceOfIssue(issue: ModelIssue): string {
       return sentenceOfRow(issue);
     case 'crossing-bounds':
     case 'lot-not-served':
+    case 'lot-dropped':
     case 'least-run-not-served':
     case 'negative-lot':
     case 'lot-out-of-reach':
@@ -315,6 +316,7 @@ function sentenceOfBounds(
   issue: IssueWithCode<
     | 'crossing-bounds'
     | 'lot-not-served'
+    | 'lot-dropped'
     | 'least-run-not-served'
     | 'negative-lot'
     | 'lot-out-of-reach'
@@ -332,6 +334,8 @@ function sentenceOfBounds(
     }
     case 'lot-not-served':
       return `${issue.facts.name} asks for whole lots (${cellsText(place, issue.facts.count)}), which cannot be planned yet. Clear it to plan any amount.`;
+    case 'lot-dropped':
+      return `${issue.facts.name} asks for whole lots (${cellsText(place, issue.facts.count)}). The plan takes any amount instead, as asked.`;
     case 'least-run-not-served':
       return `${issue.facts.name} asks for least runs (${cellsText(place, issue.facts.count)}), which cannot be planned yet. Clear it to plan any amount.`;
     case 'negative-lot':

@@ -77,6 +77,7 @@ interface StatementFacts {
   // Bounds, lots, least runs.
   'crossing-bounds': { decision: string; lower: number; upper: number; isLowerGiven: 'yes' | 'no' };
   'lot-not-served': { name: string; count: number };
+  'lot-dropped': { name: string; count: number };
   'least-run-not-served': { name: string; count: number };
   'negative-lot': { name: string; lot: number };
   'lot-out-of-reach': { decision: string; lot: number; lower: number; upper: number };
@@ -118,6 +119,7 @@ export const warningCodes: ReadonlySet<IssueCode> = new Set<IssueCode>([
   'read-as-coefficient',
   'blank-coefficient',
   'fixed-row',
+  'lot-dropped',
   'least-run-above-upper',
   'least-run-without-effect',
   'stored-value-differs',

@@ -35,11 +35,15 @@ interface GivenAmount {
   readonly amount: number | 'free' | undefined;
 }
 
-/** @param labels one a decision cell, for the issues' facts */
+/**
+ * @param labels one a decision cell, for the issues' facts
+ * @param dropsLots plan any amount where lots are asked for, with a warning
+ */
 export function readBounds(
   declaration: ModelDeclaration,
   labels: readonly string[],
   reader: CellReader,
+  dropsLots: boolean,
 ): BoundsReading {
   const lower = readAmounts(declaration, declaration.lower, reader, true);
   const upper = readAmounts(declaration, declaration.upper, reader, false);
@@ -58,10 +62,10 @@ export function readBounds(
       reportCrossing(decision, bounds, lower[k], upper[k], reader, reported);
       return;
     }
-    reportUnusableLot(decision, bounds, lots[k], reader);
+    if (!dropsLots) reportUnusableLot(decision, bounds, lots[k], reader);
     reportIdleLeastRun(decision, bounds, leastRuns[k], reader);
   });
-  reportNotServed(declaration.lot, 'lot-not-served', lots, reader);
+  reportNotServed(declaration.lot, dropsLots ? 'lot-dropped' : 'lot-not-served', lots, reader);
   reportNotServed(declaration.leastRun, 'least-run-not-served', leastRuns, reader);
   return { lower: lowerBounds, upper: upperBounds };
 }
@@ -199,10 +203,10 @@ function reportIdleLeastRun(
   }
 }
 
-/** Lots and least runs need whole-number choices: a plan that asks for them is refused, never solved without them. */
+/** Lots and least runs need whole-number choices: a plan that asks for them is solved without only when told so. */
 function reportNotServed(
   areas: readonly NamedArea[],
-  code: 'lot-not-served' | 'least-run-not-served',
+  code: 'lot-not-served' | 'lot-dropped' | 'least-run-not-served',
   givens: readonly (GivenAmount | undefined)[],
   reader: CellReader,
 ): void {
@@ -219,7 +223,7 @@ function reportNotServed(
     }
     for (const cell of filled) {
       const lot = amounts.get(keyOf(cell))!;
-      if (code === 'lot-not-served' && lot < 0) {
+      if (code !== 'least-run-not-served' && lot < 0) {
         reader.report(statementIssue('negative-lot', cell, { name: area.name, lot }));
       }
     }

@@ -53,6 +53,8 @@ export interface PlanReading {
 export interface ReadingOptions {
   /** Date and time for TODAY and NOW, as a serial date of the workbook. */
   readonly now: number;
+  /** Plan any amount where lots are asked for. Default: such a plan is refused as long as lots cannot be planned. */
+  readonly dropsLots?: boolean;
 }
 
 /** @param planName as `listPlans` gives it; case does not count */
@@ -77,7 +79,9 @@ export function readPlan(workbook: WorkbookSnapshot, planName: string, options: 
   const sense = declaration.sense === null ? null : readSenseOf(declaration.sense, reader);
   const finder = new LabelFinder(workbook, senseCells(declaration.sense));
   const labels = knowsDecisions ? labelDecisions(declaration, decisions, finder, reader) : [];
-  const rest = knowsDecisions ? readAmounts(declaration, decisions, labels, variables, finder, reader) : null;
+  const rest = knowsDecisions
+    ? readAmounts(declaration, decisions, labels, variables, finder, reader, options.dropsLots === true)
+    : null;
   const labelled = labels.map((label, k) => ({ cell: decisions.cells[k], label }));
   issues.push(...labelChains(reader.issues, labelled, workbook, finder));
 
@@ -105,6 +109,7 @@ function readAmounts(
   variables: readonly number[],
   finder: LabelFinder,
   reader: CellReader,
+  dropsLots: boolean,
 ): ModelAmounts | null {
   const objective = readObjective(declaration, variables, reader);
   const sets = declaration.constraints
@@ -112,7 +117,7 @@ function readAmounts(
     .filter((set): set is UnlabelledSet => set !== undefined);
   const constraintSets = labelConstraints(declaration, sets, finder, reader);
   reportFixedRows(constraintSets, reader);
-  const bounds = readBounds(declaration, labels, reader);
+  const bounds = readBounds(declaration, labels, reader, dropsLots);
   if (objective === null) {
     return null;
   }

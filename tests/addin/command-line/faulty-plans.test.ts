@@ -148,6 +148,13 @@ const faults: readonly Fault[] = [
   },
 ];
 
+it('a lot is planned as any amount with --relax, and the report says so', () => {
+  folder.write('relaxed.xlsx', tileWorksFile({ cells: { E1: 5 }, names: { 'Week.Lot': 'Plan!$E$1' } }));
+  const { exitCode, json } = folder.runJson('solve', 'relaxed.xlsx', '--relax', '--out', 'relaxed-plan.xlsx');
+  expect([exitCode, json.status]).toEqual([0, 'optimal']);
+  expect(json.issues).toMatchObject([{ code: 'lot-dropped', severity: 'warning', cell: 'Plan!E1' }]);
+});
+
 describe.each(faults)('$what', ({ what, changes, code, cell }) => {
   const name = `${what.replace(/\W+/g, '-')}.xlsx`;
 

@@ -4,9 +4,10 @@
  */
 import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
+import { readPlan } from '../../../../addin/domain/model-from-sheet/read-plan';
 import { CellError } from '../../../../addin/domain/sheet/cell-value';
 import { sentenceOfIssue } from '../../../../addin/wording/issue-sentences';
-import { issueTexts, readTiles, type Changes } from './tile-works';
+import { issueTexts, readTiles, tileWorkbook, type Changes } from './tile-works';
 
 type Fault = readonly [title: string, changes: Changes, issues: readonly string[], sentence: string];
 
@@ -566,6 +567,17 @@ it.each(warningsBesideErrors)('%s is a warning beside the error', (_title, chang
   expect(sentencesOf(changes)).toContain(sentence);
 });
 
+it('AD-33 a filled Lot is a warning where whole-number demands are dropped, and its bounds need hold no whole lot', () => {
+  const changes = { cells: { J2: 12, J4: 50 }, names: { 'Week.Lot': 'Plan!$J$2:$J$4' } };
+  const { model, issues } = readPlan(tileWorkbook(changes).snapshot(), 'Week', { now: 0, dropsLots: true });
+  expect(issueTexts(issues)).toEqual(['lot-dropped at Plan!J2']);
+  expect(issues.map(({ severity }) => severity)).toEqual(['warning']);
+  expect(model).not.toBeNull();
+  expect(issues.map(sentenceOfIssue)).toEqual([
+    'Week.Lot asks for whole lots (Plan!J2 and 1 more cell). The plan takes any amount instead, as asked.',
+  ]);
+});
+
 it('AD-71 every code of the statement that the rules list is tried above', () => {
   const tried = new Set(
     [...errors, ...warnings, ...warningsBesideErrors].flatMap(([, , issues]) =>
@@ -578,6 +590,6 @@ it('AD-71 every code of the statement that the rules list is tried above', () =>
     [...codes.matchAll(/`([a-z-]+)`/g)].map(([, code]) => code),
   );
   // Tried with the formulas themselves: a workbook that gives them would be large, or would need a fault of ours.
-  const triedElsewhere = new Set(['array-too-large', 'several-sheets', 'model-disagrees']);
+  const triedElsewhere = new Set(['array-too-large', 'several-sheets', 'model-disagrees', 'lot-dropped']);
   expect(listed.filter((code) => !triedElsewhere.has(code)).sort()).toEqual([...tried].sort());
 });
