@@ -59,6 +59,11 @@ export const tolerances = {
   presolveCancellation: 1e-12,
   /** Presolve: are two rows or columns parallel? Each entry relative to itself. Reason: roundings of one division. */
   presolveParallel: 1e-13,
+  /**
+   * Presolve: are two lines' weighted sums near enough for the lines to be compared? Relative to the sum of magnitudes.
+   * Reason: far above the rounding of a sum of a hundred thousand terms; a wrong yes costs only the comparison.
+   */
+  presolveParallelKey: 1e-9,
   /** Final acceptance, stated space: violation relative to 1 + the largest term of its sum (design §7). */
   acceptedResidual: 1e-7,
   /** Final acceptance, stated space: duality gap relative to 1 + |objective| (design §7). */

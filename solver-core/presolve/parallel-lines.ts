@@ -61,30 +61,82 @@ export function parallelColumns(workspace: PresolveWorkspace): ParallelGroup[] {
 }
 
 function parallelLines(workspace: PresolveWorkspace, lines: Lines, leastLength: number): ParallelGroup[] {
-  const { count, length, first, next, place } = lines;
-  const hash = new Int32Array(count);
+  const { count, length } = lines;
+  const marks = new LineMarks(count);
   // How many lines fall into each bucket of hashes: one that is alone there has no parallel.
   const buckets = new Uint32Array(bucketCountFor(count));
   const mask = buckets.length - 1;
+  const compared: number[] = [];
   for (let line = 0; line < count; line++) {
     if (!lines.isActive(line) || length[line] < leastLength) continue;
-    let sum = length[line];
-    for (let e = first[line]; e !== listEnd; e = next[e]) sum = (sum + mixed(place[e])) | 0;
-    hash[line] = sum;
-    buckets[sum & mask]++;
+    marks.setHash(lines, line);
+    buckets[marks.hash[line] & mask]++;
+    compared.push(line);
     workspace.work += length[line];
   }
-  const candidates: number[] = [];
-  const key = new Float64Array(count);
-  for (let line = 0; line < count; line++) {
-    if (!lines.isActive(line) || length[line] < leastLength || buckets[hash[line] & mask] === 1) continue;
-    candidates.push(line);
-    key[line] = lineKey(lines, line);
+  const candidates = compared.filter((line) => buckets[marks.hash[line] & mask] > 1);
+  for (const line of candidates) {
+    marks.setKey(lines, line);
     workspace.work += length[line];
   }
   // Line numbers last: the order, and with it which line leads, is the same everywhere.
+  const { hash, key } = marks;
   candidates.sort((a, b) => hash[a] - hash[b] || key[a] - key[b] || a - b);
-  return groupsOf(workspace, lines, candidates, hash);
+  return groupsOf(workspace, lines, candidates, marks);
+}
+
+/** What lines are brought together by. Length: the number of lines. */
+class LineMarks {
+  /** Of the places that a line fills, and how many. */
+  readonly hash: Int32Array;
+  /** Σ weight × entry, relative to the entry in the line's first place. */
+  readonly key: Float64Array;
+  /** The same of magnitudes: what the rounding of the key is relative to. */
+  private readonly keySize: Float64Array;
+  /** The entry in the line's first place. */
+  private readonly reference: Float64Array;
+
+  constructor(count: number) {
+    this.hash = new Int32Array(count);
+    this.key = new Float64Array(count);
+    this.keySize = new Float64Array(count);
+    this.reference = new Float64Array(count);
+  }
+
+  setHash({ length, first, next, place, value }: Lines, line: number): void {
+    let sum = length[line];
+    let firstPlace = Infinity;
+    let reference = 1;
+    for (let e = first[line]; e !== listEnd; e = next[e]) {
+      sum = (sum + mixed(place[e])) | 0;
+      if (place[e] < firstPlace) {
+        firstPlace = place[e];
+        reference = value[e];
+      }
+    }
+    this.hash[line] = sum;
+    this.reference[line] = reference;
+  }
+
+  setKey({ first, next, place, value }: Lines, line: number): void {
+    let sum = 0;
+    let size = 0;
+    for (let e = first[line]; e !== listEnd; e = next[e]) {
+      const term = value[e] * (1 + (mixed(place[e]) >>> 0) / 4294967296);
+      sum += term;
+      size += Math.abs(term);
+    }
+    this.key[line] = sum / this.reference[line];
+    this.keySize[line] = size / Math.abs(this.reference[line]);
+  }
+
+  /** May these be parallel? */
+  areClose(line: number, other: number): boolean {
+    return (
+      this.hash[line] === this.hash[other] &&
+      Math.abs(this.key[line] - this.key[other]) <= tolerances.presolveParallelKey * this.keySize[line]
+    );
+  }
 }
 
 /** A power of two, a few times the number of lines. */
@@ -98,16 +150,17 @@ function groupsOf(
   workspace: PresolveWorkspace,
   lines: Lines,
   candidates: readonly number[],
-  hash: Int32Array,
+  marks: LineMarks,
 ): ParallelGroup[] {
   const scratchValue = new Float64Array(lines.placeCount);
   const groups: ParallelGroup[] = [];
   let at = 0;
   while (at < candidates.length) {
     const leader = candidates[at++];
+    if (at === candidates.length || !marks.areClose(leader, candidates[at])) continue;
     const others: { line: number; ratio: number }[] = [];
     scatter(lines, leader, scratchValue);
-    for (; at < candidates.length && hash[candidates[at]] === hash[leader]; at++) {
+    for (; at < candidates.length && marks.areClose(leader, candidates[at]); at++) {
       const ratio = parallelRatio(lines, leader, candidates[at], scratchValue);
       workspace.work += lines.length[leader];
       if (ratio === undefined) break;
@@ -143,22 +196,6 @@ function parallelRatio(
     if (difference > tolerances.presolveParallel * Math.abs(value[e])) return undefined;
   }
   return ratio;
-}
-
-/** Σ weight × entry, relative to the entry in the line's first place. */
-function lineKey({ first, next, place, value }: Lines, line: number): number {
-  let firstPlace = Infinity;
-  let reference = 1;
-  for (let e = first[line]; e !== listEnd; e = next[e]) {
-    if (place[e] >= firstPlace) continue;
-    firstPlace = place[e];
-    reference = value[e];
-  }
-  let sum = 0;
-  for (let e = first[line]; e !== listEnd; e = next[e]) {
-    sum += (value[e] / reference) * (1 + (mixed(place[e]) >>> 0) / 4294967296);
-  }
-  return sum;
 }
 
 function scatter({ first, next, place, value }: Lines, line: number, into: Float64Array): void {

@@ -303,33 +303,64 @@ export class PresolveWorkspace {
   /** Entries of `into` += factor × entries of `from`, except in one row. */
   private addMultiple(into: number, from: number, exceptRow: number, factor: number): void {
     const { scratchEntryOfRow } = this;
-    for (let e = this.firstOfColumn[into]; e !== listEnd; e = this.nextOfColumn[e]) {
-      scratchEntryOfRow[this.rowOfEntry[e]] = e;
-    }
-    this.work += this.entriesInColumn[into] + this.entriesInColumn[from];
+    // A column that much is put into grows long: then the few rows concerned are searched in its place.
+    const isByRows = this.areRowsShorter(from, exceptRow, this.entriesInColumn[into]);
+    if (!isByRows) this.scatterEntries(into);
     for (let e = this.firstOfColumn[from]; e !== listEnd; e = this.nextOfColumn[e]) {
       const row = this.rowOfEntry[e];
       if (row === exceptRow) continue;
-      const amount = factor * this.valueOfEntry[e];
-      const at = scratchEntryOfRow[row];
-      if (at === listEnd) {
-        this.addEntry(row, into, amount);
-        continue;
-      }
-      this.entryChanges++;
-      const before = this.valueOfEntry[at];
-      const after = withoutCancellation(before + amount, before, amount);
-      if (after !== 0) this.valueOfEntry[at] = after;
-      else {
-        scratchEntryOfRow[row] = listEnd;
-        this.removeEntry(at);
-      }
-      this.markRow(row);
+      const at = isByRows ? this.entryAt(row, into) : scratchEntryOfRow[row];
+      this.addToEntry(at, row, into, factor * this.valueOfEntry[e]);
     }
-    for (let e = this.firstOfColumn[into]; e !== listEnd; e = this.nextOfColumn[e]) {
-      scratchEntryOfRow[this.rowOfEntry[e]] = listEnd;
-    }
+    if (!isByRows) this.clearScattered(into, from);
+    this.work += this.entriesInColumn[from] + (isByRows ? 0 : this.entriesInColumn[into]);
     this.changedColumns.add(into);
+  }
+
+  /** Are the rows of a column, but for one, together shorter than a length? */
+  private areRowsShorter(column: number, exceptRow: number, length: number): boolean {
+    let sum = 0;
+    for (let e = this.firstOfColumn[column]; e !== listEnd && sum < length; e = this.nextOfColumn[e]) {
+      if (this.rowOfEntry[e] !== exceptRow) sum += this.entriesInRow[this.rowOfEntry[e]];
+    }
+    return sum < length;
+  }
+
+  /** The entry at a place, listEnd where there is none; found along the row. */
+  private entryAt(row: number, column: number): number {
+    let e = this.firstOfRow[row];
+    while (e !== listEnd && this.columnOfEntry[e] !== column) e = this.nextOfRow[e];
+    this.work += this.entriesInRow[row];
+    return e;
+  }
+
+  private scatterEntries(column: number): void {
+    for (let e = this.firstOfColumn[column]; e !== listEnd; e = this.nextOfColumn[e]) {
+      this.scratchEntryOfRow[this.rowOfEntry[e]] = e;
+    }
+  }
+
+  /** Undoes scatterEntries, also where entries in the rows of `other` have gone since. */
+  private clearScattered(column: number, other: number): void {
+    for (const cleared of [column, other]) {
+      for (let e = this.firstOfColumn[cleared]; e !== listEnd; e = this.nextOfColumn[e]) {
+        this.scratchEntryOfRow[this.rowOfEntry[e]] = listEnd;
+      }
+    }
+  }
+
+  /** @param at the entry at this place, listEnd where there is none yet */
+  private addToEntry(at: number, row: number, column: number, amount: number): void {
+    if (at === listEnd) {
+      this.addEntry(row, column, amount);
+      return;
+    }
+    const before = this.valueOfEntry[at];
+    const after = withoutCancellation(before + amount, before, amount);
+    if (after === 0) this.removeEntry(at);
+    else this.valueOfEntry[at] = after;
+    this.entryChanges++;
+    this.markRow(row);
   }
 
   private shiftRow(row: number, amount: number): void {

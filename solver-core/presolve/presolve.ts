@@ -19,6 +19,8 @@ import type { Finding, PresolveEnd, RowMultiplier } from './reduction';
 import { allReductions, type ReductionSet } from './reductions/all-reductions';
 
 export type PresolveOutcome =
+  /** Nothing was found to do: the stated problem is what there is to solve. */
+  | { readonly kind: 'unchanged' }
   | { readonly kind: 'reduced'; readonly reduced: ReducedProblem }
   /** A candidate for a Farkas ray of the stated problem, length m: to be verified. */
   | { readonly kind: 'infeasible'; readonly ray: Float64Array }
@@ -48,7 +50,8 @@ export function presolve(
   meter.spend(workspace.work);
   switch (end?.kind) {
     case undefined:
-      return { kind: 'reduced', reduced: ReducedProblem.of(problem, workspace, stack) };
+      if (stack.length === 0) return { kind: 'unchanged' };
+      return { kind: 'reduced', reduced: new ReducedProblem(problem, workspace, stack) };
     case 'infeasible':
       return { kind: 'infeasible', ray: statedRay(workspace, stack, end.multipliers) };
     case 'unbounded':

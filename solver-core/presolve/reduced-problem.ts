@@ -24,30 +24,24 @@ export interface RestoredSolution {
 }
 
 export class ReducedProblem {
-  private constructor(
-    readonly problem: LinearProgram,
-    private readonly stated: LinearProgram,
-    private readonly stack: PostsolveStack,
-    /** Stated numbers of the rows and columns that are left, ascending. */
-    private readonly statedRow: Int32Array,
-    private readonly statedColumn: Int32Array,
-  ) {}
+  readonly problem: LinearProgram;
+  /** Stated numbers of the rows and columns that are left, ascending. */
+  private readonly statedRow: Int32Array;
+  private readonly statedColumn: Int32Array;
 
-  static of(stated: LinearProgram, workspace: PresolveWorkspace, stack: PostsolveStack): ReducedProblem {
-    const statedRow = activeNumbers(workspace.rowCount, (row) => workspace.isRowActive(row));
-    const statedColumn = activeNumbers(workspace.columnCount, (column) => workspace.isColumnActive(column));
-    const problem = reducedLinearProgram(stated, workspace, statedRow, statedColumn);
-    return new ReducedProblem(problem, stated, stack, statedRow, statedColumn);
+  constructor(
+    private readonly stated: LinearProgram,
+    workspace: PresolveWorkspace,
+    private readonly stack: PostsolveStack,
+  ) {
+    this.statedRow = activeNumbers(workspace.rowCount, (row) => workspace.isRowActive(row));
+    this.statedColumn = activeNumbers(workspace.columnCount, (column) => workspace.isColumnActive(column));
+    this.problem = reducedLinearProgram(stated, workspace, this.statedRow, this.statedColumn);
   }
 
   /** How often each reduction was applied. */
   get counts(): ReadonlyMap<ReductionName, number> {
     return this.stack.counts;
-  }
-
-  /** Nothing was found to do. */
-  get isUnchanged(): boolean {
-    return this.stack.length === 0;
   }
 
   /** A basic solution of the reduced problem as one of the stated problem. */
@@ -115,7 +109,10 @@ export function statusBySign(multiplier: number): number {
 }
 
 function activeNumbers(count: number, isActive: (number: number) => boolean): Int32Array {
-  return Int32Array.from(Array.from({ length: count }, (_, number) => number).filter(isActive));
+  const numbers = new Int32Array(count);
+  let found = 0;
+  for (let number = 0; number < count; number++) if (isActive(number)) numbers[found++] = number;
+  return numbers.slice(0, found);
 }
 
 function reducedLinearProgram(

@@ -137,7 +137,9 @@ export class ContinuousSolve {
     const outcome = presolve(this.problem, meter);
     switch (outcome.kind) {
       case 'reduced':
-        return outcome.reduced.isUnchanged ? undefined : outcome.reduced;
+        return outcome.reduced;
+      case 'unchanged':
+        return undefined;
       case 'infeasible': {
         const ray = this.provenFarkasRay(outcome.ray);
         if (ray !== undefined) {
