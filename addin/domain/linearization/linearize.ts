@@ -75,7 +75,7 @@ class Linearizer {
     const current = decisions.map((cell) => currentValue(this.grid, cell));
     const storedValues = new Evaluator(this.grid, {
       domain: plainNumbers,
-      inputs: current,
+      inputs: current.map((value) => value ?? 0),
       now,
       needsEvaluation: (cell) => cell.cell.value === undefined,
     });
@@ -321,8 +321,8 @@ function formulaBehind(entry: GridEntry | undefined): FormulaCell | undefined {
   return entry instanceof FormulaCell ? entry : entry instanceof ArrayPart ? entry.anchor : undefined;
 }
 
-/** What a decision cell holds now; what is no number counts as 0. */
-function currentValue(grid: CalculationGrid, cell: CellAddress): number {
+/** What a decision cell holds now; undefined where it is no number. */
+function currentValue(grid: CalculationGrid, cell: CellAddress): number | undefined {
   const value = grid.index.sheet(cell.sheet)?.cell(cell.row, cell.column)?.value;
-  return typeof value === 'number' ? value : 0;
+  return typeof value === 'number' ? value : undefined;
 }

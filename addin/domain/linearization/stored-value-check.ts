@@ -3,13 +3,18 @@
  * means that the workbook was not calculated after its last change, or that our evaluation is at fault; either way the
  * planner must know.
  */
-import { formatCellAddress } from '../sheet/cell-address';
 import { CellError, type CellValue } from '../sheet/cell-value';
 import type { FormulaCell } from '../calculation/calculation-grid';
 import type { DependencyGraph, GraphNode } from '../calculation/dependency-graph';
 import { isDependent, Matrix, type Scalar } from '../calculation/evaluated-value';
 import { AffineForm } from './affine-form';
 import type { FormulaIssue } from './formula-issue';
+
+/**
+ * Averages leave out a decision cell that is still blank; in the plan it holds a number and counts. There is no
+ * contradiction in that.
+ */
+const averagingFunctions = new Set(['AVERAGE', 'AVERAGEIF', 'AVERAGEIFS', 'SUBTOTAL', 'AGGREGATE']);
 
 /** Largest difference, relative to 1 + the largest term: two programs' rounding of one sum. */
 const storedValueTolerance = 1e-9;
@@ -20,11 +25,15 @@ export class StoredValueCheck {
   private readonly values: number[];
   private readonly differing = new Map<GraphNode, boolean>();
 
+  private readonly hasBlankDecision: boolean;
+
+  /** @param current what the decision cells hold; undefined for a blank one */
   constructor(
     private readonly graph: DependencyGraph,
-    current: readonly number[],
+    current: readonly (number | undefined)[],
   ) {
-    this.values = [...current];
+    this.values = current.map((value) => value ?? 0);
+    this.hasBlankDecision = current.includes(undefined);
   }
 
   /** Tells the next variable's form. */
@@ -46,7 +55,7 @@ export class StoredValueCheck {
     }
     const isFirst = !node.precedents.some((precedent) => this.isDiffering(precedent));
     this.differing.set(node, true);
-    if (isFirst) {
+    if (isFirst && !(this.hasBlankDecision && averages(cell))) {
       this.issues.push({
         code: 'stored-value-differs',
         cell: cell.address,
@@ -54,7 +63,6 @@ export class StoredValueCheck {
           stored: factOf(stored),
           evaluated: factOf(evaluated),
           formula: `=${cell.cell.formula ?? ''}`,
-          at: formatCellAddress(cell.address),
         },
       });
     }
@@ -94,6 +102,11 @@ export class StoredValueCheck {
     walked.forEach((range) => this.differing.set(range, differs));
     return differs;
   }
+}
+
+function averages(cell: FormulaCell): boolean {
+  const { formula } = cell;
+  return formula.kind === 'formula' && formula.functionNames.some((name) => averagingFunctions.has(name));
 }
 
 function factOf(value: CellValue): string | number {

@@ -158,6 +158,15 @@ describe('formulas that stay affine (coefficients by hand)', () => {
     ]);
   });
 
+  it('a formula in a table takes the values of its own row', () => {
+    const { readings } = read({ H2: '=Goods[[#This Row],[Made]]*Goods[[#This Row],[Price]]' }, ['H2'], {
+      tables: [
+        { name: 'Goods', sheet: 'Plan', ref: 'A1:B3', headerRowCount: 0, columnNames: ['Made', 'Price'] },
+      ],
+    });
+    expect(readings[0]).toMatchObject({ form: { variables: [1], coefficients: [3] } });
+  });
+
   it('a formula of one cell takes from a range the value of its own row', () => {
     const { readings } = read({ E2: '=A1:A3*2' }, ['E2']);
     expect(readings[0]).toMatchObject({ form: { variables: [1], coefficients: [2] } });
@@ -495,6 +504,14 @@ describe('stored values against our own evaluation', () => {
     expect(
       warnings.map(({ code, cell: at, facts }) => [code, at, facts['stored'], facts['evaluated']]),
     ).toEqual([['stored-value-differs', cell('D2'), 61, 60]]);
+  });
+
+  it('an average that leaves out a decision cell still blank is no contradiction, nor is what builds on it', () => {
+    const { warnings } = read(
+      { D1: { formula: 'AVERAGE(A1:A3)', value: 15 }, D2: { formula: 'D1+1', value: 16 } },
+      ['D2'],
+    );
+    expect(warnings).toEqual([]);
   });
 
   it('rounding of another program is no contradiction', () => {
