@@ -7,7 +7,7 @@ import { fileURLToPath } from 'node:url';
 import { gunzipSync } from 'node:zlib';
 import type { Highs } from 'highs';
 import type { LinearProgram, SolveResult } from '#solver-core';
-import { loadHighsOnce, toHighsModel } from '../oracles/highs-reference';
+import { loadHighsOnce, solveWithHighs, toHighsModel } from '../oracles/highs-reference';
 import { loadBuiltCore, type SolverCore } from './built-core';
 import { geometricMean, inMilliseconds, median, table, timeOf } from './timing';
 
@@ -15,9 +15,13 @@ const lpFolder =
   process.env.PLANROW_LP ??
   path.resolve(path.dirname(fileURLToPath(import.meta.url)), '..', '..', '..', 'shared', 'lp');
 
-/** Rounds of each problem, and the milliseconds after which no further round is begun. */
-const rounds = 5;
-const enough = 15_000;
+/** Rounds of each problem: these at most; no further one is begun after `enough` milliseconds and `least` rounds. */
+const rounds = { least: 3, most: 15 };
+const enough = 1_000;
+/** After this many milliseconds on one problem no further round is begun at all. */
+const tooLong = 15_000;
+/** Solved over and over before anything is timed, so that the engine has compiled what is hot. */
+const warmUp = { problems: ['scagr7', 'scfxm1', 'stair'], milliseconds: 3_000 };
 
 interface Measured {
   readonly name: string;
@@ -49,13 +53,28 @@ export async function measureProblemSet(
   if (chosen.length === 0) {
     return '';
   }
+  warm(core, highs);
   const measured: Measured[] = [];
   for (const [key, { expected }] of chosen) {
-    const text = gunzipSync(readFileSync(path.join(lpFolder, `${key}.mps.gz`))).toString('latin1');
+    const text = readText(key);
     measured.push(await measureProblem(core, highs, key.slice(set.length + 1), text, expected));
     process.stderr.write(`${key}\n`);
   }
   return report(set, measured);
+}
+
+function readText(key: string): string {
+  return gunzipSync(readFileSync(path.join(lpFolder, `${key}.mps.gz`))).toString('latin1');
+}
+
+function warm(core: SolverCore, highs: Highs): void {
+  const problems = warmUp.problems.map((name) => core.readMps(readText(`netlib/${name}`)));
+  for (const begun = performance.now(); performance.now() - begun < warmUp.milliseconds;) {
+    for (const problem of problems) {
+      core.solve(problem);
+      solveWithHighs(highs, problem, { presolve: 'on' });
+    }
+  }
 }
 
 async function measureProblem(
@@ -72,7 +91,9 @@ async function measureProblem(
   const theirs: number[] = [];
   let result: SolveResult | undefined;
   const begun = performance.now();
-  for (let round = 0; round < rounds && (round === 0 || performance.now() - begun < enough); round++) {
+  for (let round = 0; round < rounds.most; round++) {
+    const spent = performance.now() - begun;
+    if ((round >= rounds.least && spent > enough) || spent > tooLong) break;
     model.clearSolver();
     theirs.push((await timeOf(() => model.run())).milliseconds);
     const run = await timeOf(() => core.solve(problem));
