@@ -7,10 +7,7 @@
  * with m rows and n columns. A missing bound is −Infinity or Infinity. rowLower = rowUpper makes an equation,
  * two finite different bounds a ranged row, two infinite bounds a free row (its dual value is 0).
  */
-import type {
-  ReadonlyFloat64Array,
-  ReadonlyUint8Array,
-} from '../numerics/typed-array-views';
+import type { ReadonlyFloat64Array, ReadonlyUint8Array } from '../numerics/typed-array-views';
 import type { SparseMatrix } from '../sparse/sparse-matrix';
 
 export type Sense = 'minimise' | 'maximise';

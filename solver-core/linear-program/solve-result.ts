@@ -85,8 +85,4 @@ export interface ImpreciseResult extends SolutionValues, Effort {
 }
 
 export type SolveResult =
-  | OptimalResult
-  | InfeasibleResult
-  | UnboundedResult
-  | StoppedResult
-  | ImpreciseResult;
+  OptimalResult | InfeasibleResult | UnboundedResult | StoppedResult | ImpreciseResult;
