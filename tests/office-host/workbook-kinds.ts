@@ -143,6 +143,7 @@ const customXmlPartScopedCollectionKind: ObjectKind<{ readonly namespace: string
     workbook.xmlParts
       .filter(({ xml }) => namespaceOf(xml) === target.namespace)
       .map((part) => HostObject.of(customXmlPartKind, part)),
+  index: (_target, session, key) => xmlPartObject(session, key),
   methods: {
     GetOnlyItemOrNullObject: (target, { workbook }) => {
       const found = workbook.xmlParts.filter(({ xml }) => namespaceOf(xml) === target.namespace);

@@ -1,0 +1,74 @@
+/// <reference types="office-js" />
+/**
+ * The one place where batches are run: everything that goes to Excel passes through here, so that time-outs and
+ * errors are met in one way.
+ */
+import { WorkbookError } from '../../ports/workbook';
+import { workbookErrorOf } from './excel-errors';
+import { refuseOldExcel } from './excel-requirements';
+
+export interface ExcelTiming {
+  /** How long an answer may take. Excel on the web has been seen never to answer. */
+  readonly secondsToWait: number;
+  /** Calls back once, after that many seconds, unless the returned function is called before. */
+  readonly startTimer: (seconds: number, callback: () => void) => () => void;
+}
+
+export const usualTiming: ExcelTiming = {
+  secondsToWait: 60,
+  startTimer: (seconds, callback) => {
+    const timer = setTimeout(callback, seconds * 1000);
+    return () => clearTimeout(timer);
+  },
+};
+
+export interface OpenBatch {
+  readonly context: Excel.RequestContext;
+  /** One round trip: sends what was asked for since the last one, and waits for the answer. */
+  sync(): Promise<void>;
+}
+
+export class ExcelBatches {
+  constructor(private readonly timing: ExcelTiming = usualTiming) {}
+
+  /**
+   * Runs work that asks Excel for something. Not waiting for the user to leave a cell that is being edited is on
+   * purpose: a write that Excel keeps waiting would happen at a time when nobody expects it any more.
+   * @throws WorkbookError for every fault of the host
+   */
+  async run<T>(work: (batch: OpenBatch) => Promise<T>): Promise<T> {
+    refuseOldExcel();
+    // Excel.run itself may wait for ever where an answer never comes, so it is raced too, not only the sync inside.
+    let giveUp: (error: WorkbookError) => void = () => undefined;
+    const givenUp = new Promise<never>((_resolve, reject) => (giveUp = reject));
+    givenUp.catch(() => undefined);
+    const running = Excel.run((context) => work({ context, sync: () => this.syncInTime(context, giveUp) }));
+    running.catch(() => undefined);
+    try {
+      return await Promise.race([running, givenUp]);
+    } catch (error) {
+      throw workbookErrorOf(error);
+    }
+  }
+
+  private async syncInTime(
+    context: Excel.RequestContext,
+    giveUp: (error: WorkbookError) => void,
+  ): Promise<void> {
+    const { secondsToWait, startTimer } = this.timing;
+    const stopTimer = startTimer(secondsToWait, () =>
+      giveUp(
+        new WorkbookError(
+          'no-answer',
+          `Excel has not answered for ${secondsToWait} seconds. Look whether it waits for something, then try again.`,
+          { canRetry: true },
+        ),
+      ),
+    );
+    try {
+      await context.sync();
+    } finally {
+      stopTimer();
+    }
+  }
+}

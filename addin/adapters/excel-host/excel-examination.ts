@@ -1,0 +1,429 @@
+/// <reference types="office-js" />
+/**
+ * One round trip before a write: what the cells, names and widths hold that are to be changed, whether Excel will let
+ * us, and whether the workbook is still what the plan was made from. Nothing is touched; what comes out is the journal
+ * of the write.
+ */
+import { cellKey, formatCellAddress, type CellAddress } from '../../domain/sheet/cell-address';
+import { cellsOf, containsCell, rangesOverlap, type CellRange } from '../../domain/sheet/cell-range';
+import type { WorkbookSnapshot } from '../../domain/sheet/sheet-snapshot';
+import { recordNamespace } from '../../domain/results-to-sheet/record-text';
+import { nothingWritten, type CellEdit, type PlannedEdits } from '../../ports/planned-edits';
+import { WorkbookError } from '../../ports/workbook';
+import type { OpenBatch } from './excel-batch';
+import { Fingerprint } from './excel-fingerprint';
+import { contentsOf } from './excel-contents';
+import { textFormat } from './excel-entry';
+import type { CellChange, CellContent, Journal, NameChange, WidthChange } from './excel-journal';
+import { rangesOfAddress } from './excel-ranges';
+import { rectanglesOf } from './excel-rectangles';
+import { xmlOfRecord } from './excel-record';
+import type { ExcelAbilities } from './excel-requirements';
+import { pointsOfCharacters } from './excel-widths';
+
+/** How the workbook is called in sentences. */
+const theWorkbook = 'the workbook';
+
+export interface Examined {
+  readonly journal: Journal;
+  /** The part that holds the record; undefined where there is none. */
+  readonly recordPartId: string | undefined;
+}
+
+/** @throws WorkbookError where the plan cannot be carried out; nothing has been touched then */
+export async function examine(
+  batch: OpenBatch,
+  edits: PlannedEdits,
+  abilities: ExcelAbilities,
+  basis: WorkbookSnapshot | undefined,
+): Promise<Examined> {
+  const examination = new Examination(batch.context, edits, abilities, basis);
+  const fingerprint = basis === undefined ? undefined : new Fingerprint(batch.context, basis);
+  fingerprint?.request();
+  await batch.sync();
+  examination.refuseImpossible();
+  fingerprint?.compare();
+  while (fingerprint?.isDone === false) {
+    fingerprint.request();
+    await batch.sync();
+    fingerprint.compare();
+  }
+  return { journal: examination.journal(), recordPartId: examination.recordPartId };
+}
+
+interface TargetSheet {
+  readonly name: string;
+  readonly worksheet: Excel.Worksheet;
+  readonly tables: Excel.TableCollection;
+}
+
+interface Target {
+  readonly range: CellRange;
+  readonly loaded: Excel.Range;
+  readonly merged: Excel.RangeAreas | undefined;
+}
+
+interface TargetName {
+  readonly name: string;
+  readonly scope: string | null;
+  /** undefined on a sheet that is still to be added. */
+  readonly item: Excel.NamedItem | undefined;
+}
+
+class Examination {
+  private readonly application: Excel.Application;
+  private readonly protection: Excel.WorkbookProtection;
+  private readonly sheets: readonly TargetSheet[];
+  private readonly addedSheets: readonly Excel.Worksheet[];
+  /** Cells that get a value or a formula, on sheets that are there. */
+  private readonly targets: readonly Target[];
+  /** Cells that must hold a formula, because their stored value is to be renewed. */
+  private readonly formulaCells: readonly Target[];
+  private readonly formatSources: readonly Target[];
+  private readonly wrapped: readonly { readonly range: CellRange; readonly format: Excel.RangeFormat }[];
+  private readonly widths: readonly {
+    readonly sheet: string;
+    readonly column: number;
+    readonly format: Excel.RangeFormat;
+  }[];
+  private readonly names: readonly TargetName[];
+  private readonly arrays = new Map<string, readonly CellRange[]>();
+  private readonly recordXml: OfficeExtension.ClientResult<string> | undefined;
+  private readonly recordPart: Excel.CustomXmlPart | undefined;
+
+  /** Everything is asked for here, and read after the round trip. */
+  constructor(
+    private readonly context: Excel.RequestContext,
+    private readonly edits: PlannedEdits,
+    private readonly abilities: ExcelAbilities,
+    private readonly basis: WorkbookSnapshot | undefined,
+  ) {
+    const { workbook } = context;
+    this.application = workbook.application.load('calculationMode');
+    this.protection = workbook.protection.load('protected');
+    const isAdded = (name: string): boolean => edits.addedSheets.includes(name);
+    const present = [...edits.sheets].filter(([name]) => !isAdded(name));
+    this.sheets = present.map(([name]) => {
+      const worksheet = workbook.worksheets.getItemOrNullObject(name).load('name');
+      worksheet.protection.load('protected');
+      worksheet.autoFilter.load('isDataFiltered');
+      return {
+        name,
+        worksheet,
+        tables: worksheet.tables.load('items/name,items/autoFilter/isDataFiltered'),
+      };
+    });
+    this.addedSheets = edits.addedSheets.map((name) =>
+      workbook.worksheets.getItemOrNullObject(name).load('name'),
+    );
+    const cells = present.flatMap(([sheet, { cells: ofSheet }]) =>
+      [...ofSheet.values()].map((edit) => ({ ...edit, cell: { ...edit.cell, sheet } })),
+    );
+    const arrayProperties = abilities.findsArrays ? ',hasSpill,savedAsArray' : '';
+    const isStored = ({ content }: CellEdit): boolean => content.kind === 'storedValue';
+    const written = cells.filter((edit) => !isStored(edit));
+    this.targets = this.requestRanges(
+      written.map(({ cell }) => cell),
+      `values,formulas,valueTypes,numberFormat,rowHidden${arrayProperties}`,
+      true,
+    );
+    this.formulaCells = this.requestRanges(
+      cells.filter(isStored).map(({ cell }) => cell),
+      `formulas${arrayProperties}`,
+    );
+    const sources = new Map<string, CellAddress>();
+    for (const { cells: ofSheet } of edits.sheets.values()) {
+      for (const { numberFormatOf: source } of ofSheet.values()) {
+        if (source !== undefined && !isAdded(source.sheet)) sources.set(formatCellAddress(source), source);
+      }
+    }
+    this.formatSources = this.requestRanges([...sources.values()], 'numberFormat');
+    this.wrapped = written
+      .filter(({ wrapsText }) => wrapsText)
+      .map(({ cell }) => {
+        const range = {
+          sheet: cell.sheet,
+          top: cell.row,
+          left: cell.column,
+          bottom: cell.row,
+          right: cell.column,
+        };
+        return { range, format: this.rangeOf(range).format.load('wrapText') };
+      });
+    this.widths = present.flatMap(([sheet, { widths }]) =>
+      [...widths.keys()].map((column) => {
+        const range = { sheet, top: 0, left: column, bottom: 0, right: column };
+        return { sheet, column, format: this.rangeOf(range).format.load('columnWidth') };
+      }),
+    );
+    const seen = new Set<string>();
+    this.names = edits.names.flatMap(({ name, scope }): TargetName[] => {
+      const key = `${name.toLowerCase()}\n${(scope ?? '').toLowerCase()}`;
+      if (seen.has(key)) return [];
+      seen.add(key);
+      if (scope !== null && edits.addedSheets.some((added) => added.toLowerCase() === scope.toLowerCase())) {
+        return [{ name, scope, item: undefined }];
+      }
+      const collection =
+        scope === null ? workbook.names : workbook.worksheets.getItemOrNullObject(scope).names;
+      return [{ name, scope, item: collection.getItemOrNullObject(name).load('name,formula,visible') }];
+    });
+    if (edits.record !== undefined) {
+      this.recordPart = workbook.customXmlParts
+        .getByNamespace(recordNamespace)
+        .getOnlyItemOrNullObject()
+        .load('id');
+      this.recordXml = this.recordPart.getXml();
+    }
+  }
+
+  /** @throws WorkbookError for what Excel would not do, or what must not be done */
+  refuseImpossible(): void {
+    for (const { name, worksheet } of this.sheets) {
+      if (worksheet.isNullObject) throw refusal('write-failed', `it has no sheet named ${name}`);
+    }
+    for (const added of this.addedSheets) {
+      if (!added.isNullObject) {
+        throw refusal('would-overwrite', `it already has a sheet named ${added.name}`);
+      }
+    }
+    const isLocked = this.sheets.filter(({ worksheet }) => worksheet.protection.protected);
+    if (isLocked.length > 0) {
+      const sheets = isLocked.map(({ name }) => name);
+      throw new WorkbookError(
+        'protected-sheet',
+        `The sheet ${sheets.join(', ')} is protected, so nothing was written. Lift the protection and write again.`,
+        { sheets, canRetry: true },
+      );
+    }
+    if (this.addedSheets.length > 0 && this.protection.protected) {
+      throw new WorkbookError(
+        'protected-structure',
+        `The workbook's structure is protected, so the sheet ${this.edits.addedSheets[0]} cannot be added and nothing was written. Lift the protection and write again.`,
+        { sheets: this.edits.addedSheets, canRetry: true },
+      );
+    }
+    this.refuseFiltered();
+    this.targets.forEach((target) => this.refuseOverwriting(target));
+    for (const { range, loaded } of this.formulaCells) {
+      loaded.formulas.forEach((row, down) =>
+        row.forEach((formula: unknown, across) => {
+          const cell = { sheet: range.sheet, row: range.top + down, column: range.left + across };
+          if (
+            !(typeof formula === 'string' && formula.startsWith('=')) &&
+            !this.isFilled(cell, { range, loaded, merged: undefined })
+          ) {
+            const why = `${formatCellAddress(cell)} holds no formula whose value could be renewed`;
+            throw refusal('write-failed', why);
+          }
+        }),
+      );
+    }
+  }
+
+  journal(): Journal {
+    const formatOfSource = new Map<string, string>();
+    for (const { range, loaded } of this.formatSources) {
+      for (const cell of cellsOf(range)) {
+        const format: unknown = loaded.numberFormat[cell.row - range.top][cell.column - range.left];
+        formatOfSource.set(formatCellAddress(cell), String(format));
+      }
+    }
+    const wrapsBefore = new Map<string, boolean>();
+    for (const { range, format } of this.wrapped) {
+      wrapsBefore.set(formatCellAddress(firstCell(range)), format.wrapText);
+    }
+    const changeOf = (cell: CellAddress, edit: CellEdit, before: CellContent, format: string): CellChange => {
+      const after = contentAfter(edit);
+      const source = edit.numberFormatOf;
+      const wanted = (source && formatOfSource.get(formatCellAddress(source))) ?? format;
+      return {
+        cell,
+        before,
+        after,
+        formatBefore: format,
+        // A number that is written into a cell for texts would become a text.
+        formatAfter: wanted === textFormat && typeof after.value !== 'string' ? 'General' : wanted,
+        wrapsBefore: edit.wrapsText ? (wrapsBefore.get(formatCellAddress(cell)) ?? false) : undefined,
+        wrapsAfter: edit.wrapsText ? true : undefined,
+      };
+    };
+    const cells: CellChange[] = [];
+    for (const { range, loaded } of this.targets) {
+      const ofSheet = this.edits.sheets.get(range.sheet)!.cells;
+      const contents = contentsOf(range, loaded);
+      for (const { cell, content } of contents) {
+        const format: unknown = loaded.numberFormat[cell.row - range.top][cell.column - range.left];
+        cells.push(changeOf(cell, ofSheet.get(cellKey(cell.row, cell.column))!, content, String(format)));
+      }
+    }
+    for (const name of this.edits.addedSheets) {
+      for (const edit of this.edits.sheets.get(name)!.cells.values()) {
+        if (edit.content.kind === 'storedValue') {
+          throw refusal(
+            'write-failed',
+            `${formatCellAddress(edit.cell)} holds no formula whose value could be renewed`,
+          );
+        }
+        cells.push(changeOf({ ...edit.cell, sheet: name }, edit, nothing, 'General'));
+      }
+    }
+    return {
+      cells,
+      widths: this.widthChanges(),
+      names: this.nameChanges(),
+      record: this.edits.record === undefined ? undefined : this.recordChange(this.edits.record),
+      addedSheets: this.edits.addedSheets,
+      calculatesByHand: this.application.calculationMode === 'Manual',
+    };
+  }
+
+  get recordPartId(): string | undefined {
+    return this.recordPart?.isNullObject === false ? this.recordPart.id : undefined;
+  }
+
+  private widthChanges(): WidthChange[] {
+    const changes = this.widths.map(({ sheet, column, format }): WidthChange => ({
+      sheet,
+      column,
+      before: format.columnWidth,
+      after: pointsOfCharacters(this.edits.sheets.get(sheet)!.widths.get(column)!),
+    }));
+    for (const sheet of this.edits.addedSheets) {
+      for (const [column, width] of this.edits.sheets.get(sheet)!.widths) {
+        changes.push({ sheet, column, before: pointsOfCharacters(8.43), after: pointsOfCharacters(width) });
+      }
+    }
+    return changes;
+  }
+
+  private nameChanges(): NameChange[] {
+    return this.names.flatMap(({ name, scope, item }): NameChange[] => {
+      const isThis = (write: { name: string; scope: string | null }): boolean =>
+        write.name.toLowerCase() === name.toLowerCase() &&
+        (write.scope ?? '').toLowerCase() === (scope ?? '').toLowerCase();
+      const last = this.edits.names.filter(isThis).pop()!;
+      const isThere = item !== undefined && !item.isNullObject;
+      const after = last.kind === 'name' ? last.formula : null;
+      if (!isThere && after === null) return [];
+      const formula: unknown = isThere ? item.formula : undefined;
+      return [
+        {
+          name: isThere ? item.name : name,
+          scope,
+          before: isThere ? String(formula).replace(/^=/, '') : null,
+          after,
+          wasVisible: isThere ? item.visible : true,
+        },
+      ];
+    });
+  }
+
+  private recordChange(json: string): { before: string | null; after: string } {
+    const isThere = this.recordPart?.isNullObject === false;
+    return { before: isThere ? this.recordXml!.value : null, after: xmlOfRecord(json) };
+  }
+
+  /** Values written under a filter land in other rows than they are meant for. */
+  private refuseFiltered(): void {
+    const sheets = this.sheets
+      .filter(
+        ({ worksheet, tables }) =>
+          worksheet.autoFilter.isDataFiltered ||
+          tables.items.some((table) => table.autoFilter.isDataFiltered),
+      )
+      .map(({ name }) => name);
+    const hidden = this.targets.filter(
+      ({ range, loaded }) => sheets.includes(range.sheet) && loaded.rowHidden !== false,
+    );
+    if (hidden.length > 0) {
+      const filtered = sheets.filter((name) => hidden.some(({ range }) => range.sheet === name));
+      throw new WorkbookError(
+        'filtered',
+        `A filter on the sheet ${filtered.join(', ')} hides rows in which results stand, so nothing was written. Clear the filter and write again.`,
+        { sheets: filtered, ranges: hidden.map(({ range }) => range), canRetry: true },
+      );
+    }
+  }
+
+  private refuseOverwriting(target: Target): void {
+    const { range, loaded, merged } = target;
+    const covered =
+      merged === undefined || merged.isNullObject ? [] : rangesOfAddress(range.sheet, merged.address);
+    for (const { cell, content } of contentsOf(range, loaded)) {
+      const at = formatCellAddress(cell);
+      if (content.formula !== undefined) throw refusal('would-overwrite', `${at} holds a formula`);
+      if (this.isFilled(cell, target)) {
+        throw refusal('would-overwrite', `${at} is filled by an array formula`);
+      }
+      const cover = covered.find((area) => containsCell(area, cell));
+      if (cover !== undefined && (cover.top !== cell.row || cover.left !== cell.column)) {
+        throw refusal('would-overwrite', `${at} is covered by a merged cell`);
+      }
+      const edit = this.edits.sheets.get(cell.sheet)!.cells.get(cellKey(cell.row, cell.column))!;
+      const isEmptied = edit.content.kind === 'formula' && edit.content.replacesValue;
+      if (edit.content.kind === 'formula' && !isEmptied && content.value !== null) {
+        throw refusal('would-overwrite', `${at} already holds a value`);
+      }
+    }
+  }
+
+  /** Cell by cell as the workbook was read; where no array was known, Excel says it of the whole range. */
+  private isFilled(cell: CellAddress, { range, loaded }: Target): boolean {
+    const known = this.arraysOf(cell.sheet);
+    if (known.some((array) => rangesOverlap(array, range))) {
+      return known.some((array) => containsCell(array, cell));
+    }
+    return this.abilities.findsArrays && (loaded.hasSpill !== false || loaded.savedAsArray !== false);
+  }
+
+  /** What array formulas filled when the workbook was read. */
+  private arraysOf(sheetName: string): readonly CellRange[] {
+    let arrays = this.arrays.get(sheetName);
+    if (arrays === undefined) {
+      const found: CellRange[] = [];
+      this.basis?.sheets
+        .find(({ name }) => name === sheetName)
+        ?.forEachCell((_row, _column, { arrayRange }) => {
+          if (arrayRange !== undefined) found.push(arrayRange);
+        });
+      arrays = found;
+      this.arrays.set(sheetName, arrays);
+    }
+    return arrays;
+  }
+
+  private requestRanges(cells: readonly CellAddress[], properties: string, withMerged = false): Target[] {
+    return rectanglesOf(cells).map((range) => {
+      const loaded = this.rangeOf(range).load(properties);
+      const merged =
+        withMerged && this.abilities.findsMergedCells
+          ? loaded.getMergedAreasOrNullObject().load('address')
+          : undefined;
+      return { range, loaded, merged };
+    });
+  }
+
+  /** On a sheet that may not be there. */
+  private rangeOf({ sheet, top, left, bottom, right }: CellRange): Excel.Range {
+    return this.context.workbook.worksheets
+      .getItemOrNullObject(sheet)
+      .getRangeByIndexes(top, left, bottom - top + 1, right - left + 1);
+  }
+}
+
+const nothing: CellContent = { value: null, formula: undefined };
+
+function contentAfter({ content }: CellEdit): CellContent {
+  return content.kind === 'formula'
+    ? { value: content.value ?? null, formula: content.formula }
+    : { value: content.value ?? null, formula: undefined };
+}
+
+function firstCell({ sheet, top, left }: CellRange): CellAddress {
+  return { sheet, row: top, column: left };
+}
+
+function refusal(code: 'would-overwrite' | 'write-failed', why: string): WorkbookError {
+  return new WorkbookError(code, nothingWritten(theWorkbook, why));
+}
