@@ -1,6 +1,6 @@
 /**
  * Uses an equation to eliminate a column of a few entries that its rows keep within its bounds: it is put into its
- * other rows and into the objective. Only where that cannot make more entries than it takes away.
+ * other rows and into the objective. Only where that can make few entries more than it takes away.
  *
  * Undo: the column takes the value that meets the equation and is basic; y = d_j / a_j with d_j the reduced cost
  * without the equation's part. The reduced costs of all other columns are the same before and after.
@@ -28,7 +28,12 @@ interface ImpliedFreeSubstitution {
 }
 
 /** Longer columns seldom pay: what they are put into fills up. */
-const longestColumn = 4;
+const longestColumn = 12;
+/**
+ * Entries that a substitution may make beyond those it takes away, at most. A row and a column less are worth some:
+ * on the shared test problems iterations fall by a tenth from 0 to 10, little more to 20, and rise again at 40.
+ */
+const mostGrowth = 20;
 
 export const impliedFreeSubstitution: ColumnReduction<ImpliedFreeSubstitution> = {
   name: 'implied-free-substitution',
@@ -60,7 +65,7 @@ export const impliedFreeSubstitution: ColumnReduction<ImpliedFreeSubstitution> =
   },
 };
 
-/** The entry in the shortest equation that makes no growth, if it is large enough; undefined where there is none. */
+/** The entry in the shortest equation that makes little growth, if it is large enough; undefined where there is none. */
 function choosePivot(workspace: PresolveWorkspace, column: number): number | undefined {
   const { nextInColumn, entryRow, entryValue, rowLength } = workspace;
   const others = workspace.columnLength[column] - 1;
@@ -71,7 +76,7 @@ function choosePivot(workspace: PresolveWorkspace, column: number): number | und
     const row = entryRow[e];
     const length = rowLength[row];
     largestInColumn = Math.max(largestInColumn, Math.abs(entryValue[e]));
-    const grows = (length - 1) * others > length + others;
+    const grows = (length - 1) * others > length + others + mostGrowth;
     if (grows || length >= bestLength || !workspace.isEquation(row)) continue;
     best = e;
     bestLength = length;
