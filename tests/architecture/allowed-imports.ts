@@ -66,6 +66,8 @@ const domainRooms: readonly Room[] = [
   {
     path: 'addin/domain/calculation',
     mayImport: addin('domain/sheet', 'domain/formula'),
+    packages: ['numfmt'],
+    packages: ['numfmt'],
   },
   {
     path: 'addin/domain/linearization',
