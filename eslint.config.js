@@ -2,8 +2,21 @@ import tseslint from 'typescript-eslint';
 
 /** Names that would let a clock, randomness or a host into the solver core (solver-core/SPEC.md, SC-2). */
 const forbiddenInSolverCore = [
-  'Date', 'performance', 'setTimeout', 'setInterval', 'setImmediate', 'queueMicrotask',
-  'process', 'Buffer', 'require', 'window', 'document', 'self', 'globalThis', 'fetch', 'console',
+  'Date',
+  'performance',
+  'setTimeout',
+  'setInterval',
+  'setImmediate',
+  'queueMicrotask',
+  'process',
+  'Buffer',
+  'require',
+  'window',
+  'document',
+  'self',
+  'globalThis',
+  'fetch',
+  'console',
 ];
 
 export default tseslint.config(
@@ -13,7 +26,10 @@ export default tseslint.config(
     languageOptions: { parserOptions: { projectService: true } },
     rules: {
       '@typescript-eslint/consistent-type-imports': 'error',
-      '@typescript-eslint/switch-exhaustiveness-check': ['error', { considerDefaultExhaustiveForUnions: true }],
+      '@typescript-eslint/switch-exhaustiveness-check': [
+        'error',
+        { considerDefaultExhaustiveForUnions: true },
+      ],
       '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_' }],
       '@typescript-eslint/no-non-null-assertion': 'off',
       eqeqeq: ['error', 'always', { null: 'ignore' }],
@@ -28,9 +44,24 @@ export default tseslint.config(
       'no-restricted-properties': [
         'error',
         // Their last bit is left open by the language: results would differ between machines.
-        ...['random', 'log', 'log2', 'log10', 'log1p', 'exp', 'expm1', 'pow', 'sin', 'cos', 'tan', 'hypot', 'cbrt', 'sinh', 'cosh', 'tanh'].map(
-          (property) => ({ object: 'Math', property }),
-        ),
+        ...[
+          'random',
+          'log',
+          'log2',
+          'log10',
+          'log1p',
+          'exp',
+          'expm1',
+          'pow',
+          'sin',
+          'cos',
+          'tan',
+          'hypot',
+          'cbrt',
+          'sinh',
+          'cosh',
+          'tanh',
+        ].map((property) => ({ object: 'Math', property })),
       ],
     },
   },

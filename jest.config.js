@@ -6,11 +6,16 @@ export default {
   transform: {
     '\\.(m?[jt]sx?)$': [
       '@swc/jest',
-      { jsc: { target: 'es2022', parser: { syntax: 'typescript', tsx: true } }, module: { type: 'commonjs' } },
+      {
+        jsc: { target: 'es2022', parser: { syntax: 'typescript', tsx: true } },
+        module: { type: 'commonjs' },
+      },
     ],
   },
   // These packages ship only ES modules, which jest's CommonJS loader cannot take as they are.
-  transformIgnorePatterns: ['/node_modules/(?!(@borgar|@zip\\.js|numfmt)/)'],
+  transformIgnorePatterns: ['/node_modules/(?!(@borgar|@zip\\.js)/)'],
+  // Its `exports` name a CommonJS file that the package lacks.
+  moduleNameMapper: { '^numfmt$': '<rootDir>/node_modules/numfmt/dist/index.js' },
   reporters: ['default', '<rootDir>/tests/support/closing-line-reporter.cjs'],
   maxWorkers: 2,
 };

@@ -18,7 +18,12 @@ const shared = {
           options: {
             transpileOnly: true,
             configFile: path.join(root, 'tsconfig.base.json'),
-            compilerOptions: { composite: false, declaration: false, emitDeclarationOnly: false, jsx: 'react-jsx' },
+            compilerOptions: {
+              composite: false,
+              declaration: false,
+              emitDeclarationOnly: false,
+              jsx: 'react-jsx',
+            },
           },
         },
       },
