@@ -8,9 +8,9 @@ import { headingCellOf, rangeOfCell } from './result-lines';
 import type { ResultTexts } from './result-texts';
 import type { ColumnWidthWrite } from './write-plan';
 
-/** Widths are set so that a number of some millions and a heading's words fit; a gloss may take two lines. */
+/** Widths are set so that a number of some millions fits, and title and gloss of a heading one line each. */
 const narrowestColumn = 12;
-const widestColumn = 20;
+const widestColumn = 32;
 const widestLabelColumn = 42;
 
 /**
