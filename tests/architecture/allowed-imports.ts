@@ -67,7 +67,6 @@ const domainRooms: readonly Room[] = [
     path: 'addin/domain/calculation',
     mayImport: addin('domain/sheet', 'domain/formula'),
     packages: ['numfmt'],
-    packages: ['numfmt'],
   },
   {
     path: 'addin/domain/linearization',

@@ -27,8 +27,8 @@ import {
 export interface WorkerLike {
   postMessage(message: WorkerRequest, transfer: ArrayBuffer[]): void;
   terminate(): void;
-  onmessage: ((event: { readonly data: WorkerReply }) => void) | null;
-  onerror: ((event: unknown) => void) | null;
+  /** Called once, before anything is posted. @param onError the worker could not be loaded, or threw */
+  listen(onReply: (reply: WorkerReply) => void, onError: () => void): void;
 }
 
 export interface WorkerEngineParts {
@@ -164,9 +164,10 @@ export class WorkerPlanEngine implements PlanEngine {
   private runningWorker(): WorkerLike {
     if (this.worker === null) {
       const worker = this.parts.startWorker();
-      worker.onmessage = ({ data }) => this.receive(data);
-      worker.onerror = () =>
-        this.endWorker(this.hasAnswered ? null : new WorkerNotHad('The worker could not be started.'));
+      worker.listen(
+        (reply) => this.receive(reply),
+        () => this.endWorker(this.hasAnswered ? null : new WorkerNotHad('The worker could not be started.')),
+      );
       this.worker = worker;
       this.hasAnswered = false;
     }

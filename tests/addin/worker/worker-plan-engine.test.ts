@@ -18,13 +18,13 @@ const pacing = { now: () => 0, pause: immediately };
 
 /** A worker on this thread that hears and says clones. */
 class ClonedWorker implements WorkerLike {
-  onmessage: WorkerLike['onmessage'] = null;
-  onerror: WorkerLike['onerror'] = null;
+  hear: (reply: WorkerReply) => void = () => undefined;
+  fail: () => void = () => undefined;
   isEnded = false;
   readonly heard: WorkerRequest['kind'][] = [];
   private readonly answerer = new RequestAnswerer(pacing, (reply) => {
-    const data = structuredClone(reply);
-    if (!this.isEnded) this.onmessage?.({ data });
+    const heard = structuredClone(reply);
+    if (!this.isEnded) this.hear(heard);
   });
 
   constructor(private readonly isDeaf = false) {}
@@ -32,6 +32,11 @@ class ClonedWorker implements WorkerLike {
   postMessage(message: WorkerRequest, transfer: ArrayBuffer[]): void {
     this.heard.push(message.kind);
     if (!this.isDeaf) void this.answerer.receive(structuredClone(message, { transfer }));
+  }
+
+  listen(onReply: (reply: WorkerReply) => void, onError: () => void): void {
+    this.hear = onReply;
+    this.fail = onError;
   }
 
   terminate(): void {
@@ -127,7 +132,7 @@ it('does the work on this thread where the worker’s file cannot be had, or it 
     const { engine, timers } = engineWith({ startWorker: () => worker });
     const { outcome } = engine.solve(request(), deafEvents);
     while (worker.heard.length === 0) await immediately();
-    if (end === 'error') worker.onerror?.({});
+    if (end === 'error') worker.fail();
     else timers.goOff();
     expect(await outcome).toMatchObject({ status: 'optimal' });
     expect(worker.isEnded).toBe(true);
@@ -145,8 +150,8 @@ it('a worker that ends in the middle is told as lost, and the next request gets 
   });
   const { outcome } = engine.solve(request(), deafEvents);
   while ((workers[0]?.heard.length ?? 0) === 0) await immediately();
-  workers[0].onmessage?.({ data: { version: 1, id: 1, kind: 'stage', stage: 'reading' } });
-  workers[0].onerror?.({});
+  workers[0].hear({ version: 1, id: 1, kind: 'stage', stage: 'reading' });
+  workers[0].fail();
   await expect(outcome).rejects.toMatchObject({ name: 'PlanEngineError', code: 'lost' });
   expect(await engine.check(request())).toMatchObject({ issues: [] });
   expect(workers).toHaveLength(2);
@@ -178,7 +183,7 @@ it('a worker that does not hear a stop is ended', async () => {
   const { engine, timers } = engineWith({ startWorker: () => worker });
   const running = engine.solve(request(), deafEvents);
   while (worker.heard.length === 0) await immediately();
-  worker.onmessage?.({ data: { version: 1, id: 1, kind: 'stage', stage: 'reading' } satisfies WorkerReply });
+  worker.hear({ version: 1, id: 1, kind: 'stage', stage: 'reading' });
   running.stop();
   timers.goOff();
   expect(await running.outcome).toEqual({ kind: 'stopped-beforehand' });

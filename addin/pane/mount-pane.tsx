@@ -1,0 +1,14 @@
+/**
+ * Puts the pane into a page: the program behind it, and the views before it.
+ */
+import { createRoot } from 'react-dom/client';
+import type { PaneSurroundings } from './pane-effects';
+import { PaneProgram } from './pane-program';
+import type { StartCommand } from './pane-state';
+import { PlanrowPane } from './PlanrowPane';
+
+export function mountPane(element: Element, surroundings: PaneSurroundings, command: StartCommand): void {
+  const program = new PaneProgram(surroundings);
+  createRoot(element).render(<PlanrowPane program={program} isHostDark={surroundings.host.isDark()} />);
+  program.start(command);
+}
