@@ -167,11 +167,20 @@ export class OfficeHost implements HostSession {
 
   select(sheetName: string, ...ranges: Omit<CellRange, 'sheet'>[]): void {
     const sheet = this.workbook.sheetNamed(sheetName)!;
+    if (sheet !== this.workbook.selection.sheet) {
+      this.raise(eventTypes.sheetActivated, sheet, { type: 'WorksheetActivated' });
+    }
     this.workbook.selection = { sheet, ranges: ranges.map((range) => ({ ...range, sheet: sheet.name })) };
     this.raise(eventTypes.selectionChanged, sheet, {
       address: ranges.map((range) => localAddress({ ...range, sheet: sheetName })).join(','),
       type: 'WorksheetSelectionChanged',
     });
+    this.flushEvents();
+  }
+
+  addSheet(name: string): void {
+    const sheet = this.workbook.addSheet(name);
+    this.raise(eventTypes.sheetAdded, sheet, { source: 'Local', type: 'WorksheetAdded' });
     this.flushEvents();
   }
 

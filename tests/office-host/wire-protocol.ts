@@ -86,6 +86,8 @@ export interface EventMessage {
 
 export const eventTypes = {
   dataChanged: 10,
-  sheetActivated: 12,
+  sheetActivated: 11,
+  sheetAdded: 13,
   selectionChanged: 14,
+  sheetDeleted: 15,
 } as const;

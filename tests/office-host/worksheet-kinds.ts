@@ -19,6 +19,8 @@ export function eventMethods<T>(targetOf: (target: T) => string): NonNullable<Ob
   const members = Object.entries({
     DataChanged: eventTypes.dataChanged,
     Activated: eventTypes.sheetActivated,
+    Added: eventTypes.sheetAdded,
+    Deleted: eventTypes.sheetDeleted,
     SelectionChanged: eventTypes.selectionChanged,
   });
   return Object.fromEntries(

@@ -3,6 +3,7 @@
  * The one place where batches are run: everything that goes to Excel passes through here, so that time-outs and
  * errors are met in one way.
  */
+import type { Stop } from '../../ports/selection';
 import { WorkbookError } from '../../ports/workbook';
 import { workbookErrorOf } from './excel-errors';
 import { refuseOldExcel } from './excel-requirements';
@@ -25,7 +26,13 @@ export const usualTiming: ExcelTiming = {
 export interface OpenBatch {
   readonly context: Excel.RequestContext;
   /** One round trip: sends what was asked for since the last one, and waits for the answer. */
-  sync(): Promise<void>;
+  readonly sync: () => Promise<void>;
+}
+
+/** What the library gives for an event that was registered. */
+interface Registration {
+  remove(): void;
+  readonly context: OfficeExtension.ClientRequestContext;
 }
 
 export class ExcelBatches {
@@ -49,6 +56,23 @@ export class ExcelBatches {
     } catch (error) {
       throw workbookErrorOf(error);
     }
+  }
+
+  /** Registers events; the returned function takes them back, as far as Excel still answers. */
+  async watch(register: (context: Excel.RequestContext) => readonly Registration[]): Promise<Stop> {
+    const registrations = await this.run(async ({ context, sync }) => {
+      const made = register(context);
+      await sync();
+      return made;
+    });
+    let isStopped = false;
+    return () => {
+      if (isStopped) return;
+      isStopped = true;
+      registrations.forEach((registration) => registration.remove());
+      // Nobody waits for it: an event that still comes is a hint too many.
+      void registrations[0]?.context.sync().catch(() => undefined);
+    };
   }
 
   private async syncInTime(
