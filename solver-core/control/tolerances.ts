@@ -69,6 +69,11 @@ export const tolerances = {
   /** Final acceptance, stated space: duality gap relative to 1 + |objective| (design §7). */
   acceptedDualityGap: 1e-8,
   /**
+   * Stated space: is an accepted optimum near enough to go without a second look? Residuals as in the acceptance.
+   * Reason: two digits below acceptance; most problems end below 1e-12.
+   */
+  polishedResidual: 1e-9,
+  /**
    * Unbounded rays v, stated space: may this component of A v, or cost · v, pass for 0? Relative to the largest term
    * of its sum. Reason: noise of cancellation, two digits below what is accepted of a violation.
    */

@@ -2,6 +2,9 @@
  * The path of one continuous solve: presolve → scale → simplex → back to the stated problem → verify; where the
  * evidence does not hold, clean up and try again, a counted number of times. Advances by work units.
  *
+ * An optimum that is accepted, but not near the last digits, is looked at once more with tighter tolerances: where
+ * sizes differ wildly, a reduced cost of 1e-8 can hide a difference in the objective that shows.
+ *
  * Nothing that presolve says is taken for an answer. Its contradictions and the rays of the reduced problem are
  * carried back and verified like everything else; where that does not hold, the stated problem is solved itself.
  */
@@ -10,7 +13,7 @@ import type { Progress } from '../control/progress-event';
 import type { WorkMeter } from '../control/work-meter';
 import type { Basis } from '../linear-program/basis';
 import type { LinearProgram } from '../linear-program/linear-program';
-import type { SolveResult, StoppedResult } from '../linear-program/solve-result';
+import type { OptimalResult, Residuals, SolveResult, StoppedResult } from '../linear-program/solve-result';
 import { presolve } from '../presolve/presolve';
 import type { ReducedProblem } from '../presolve/reduced-problem';
 import { computationalForm } from '../simplex/computational-form';
@@ -67,6 +70,8 @@ export class ContinuousSolve {
   private solver: SimplexSolver;
   private iterationsBefore = 0;
   private presolveResult: SolveResult | undefined;
+  /** An optimum that is good enough, while one more attempt is made at a better one. */
+  private accepted: OptimalResult | undefined;
   private bestImprecise: Extract<SolveResult, { status: 'imprecise' }> | undefined;
 
   /**
@@ -95,9 +100,11 @@ export class ContinuousSolve {
     for (;;) {
       const end = this.solver.advance(meter);
       if (end === undefined) return undefined;
+      const isPolishing = this.accepted !== undefined;
       const result = this.judge(end, meter);
       if (result !== undefined) return result;
-      if (!this.nextAttempt()) return this.imprecise(meter);
+      if (isPolishing) return this.acceptedNow(meter);
+      if (!this.nextAttempt()) return this.acceptedNow(meter) ?? this.imprecise(meter);
     }
   }
 
@@ -112,7 +119,9 @@ export class ContinuousSolve {
   }
 
   /** The end for a caller who stops now. */
-  stopped(cause: StoppedResult['cause'], meter: WorkMeter): StoppedResult {
+  stopped(cause: StoppedResult['cause'], meter: WorkMeter): StoppedResult | OptimalResult {
+    const accepted = this.acceptedNow(meter);
+    if (accepted !== undefined) return accepted;
     const effort = this.effort(meter);
     const { iterate, isFactorized } = this.solver;
     if (!isFactorized) {
@@ -158,13 +167,19 @@ export class ContinuousSolve {
 
   private newSolver(attempt: Attempt, startBasis: Basis | undefined): SimplexSolver {
     const isCold = startBasis === undefined;
+    const left = this.settings.iterationLimit - this.iterationsBefore;
     return new SimplexSolver(computationalForm(this.space.problem), {
       startBasis,
       primalTolerance: attempt.tolerance,
       dualTolerance: attempt.tolerance,
-      iterationLimit: this.settings.iterationLimit - this.iterationsBefore,
+      iterationLimit: Math.min(left, this.accepted === undefined ? Infinity : this.polishingLimit()),
       perturbsCosts: attempt.perturbsCosts && isCold,
     });
+  }
+
+  /** A few per cent of what it took so far: where that does not do, tighter tolerances lead to a long walk. */
+  private polishingLimit(): number {
+    return 100 + Math.floor(this.iterationsBefore / 20);
   }
 
   private nextAttempt(): boolean {
@@ -201,7 +216,14 @@ export class ContinuousSolve {
       this.keepImprecise(verdict.reason, meter);
       return undefined;
     }
-    return { status: 'optimal', ...solution, basis, residuals: verdict.residuals, ...this.effort(meter) };
+    const { residuals } = verdict;
+    const result: OptimalResult = { status: 'optimal', ...solution, basis, residuals, ...this.effort(meter) };
+    const isBetter =
+      this.accepted === undefined || worstResidual(residuals) < worstResidual(this.accepted.residuals);
+    const isPolished = this.accepted !== undefined || worstResidual(residuals) <= tolerances.polishedResidual;
+    if (isBetter && isPolished) return result;
+    this.accepted ??= result;
+    return undefined;
   }
 
   private judgeInfeasible(simplexRay: Float64Array, meter: WorkMeter): SolveResult | undefined {
@@ -241,8 +263,8 @@ export class ContinuousSolve {
   private keepImprecise(reason: string, meter: WorkMeter): void {
     const { solution, basis } = this.space.statedIterate(this.solver.iterate);
     const { residuals } = verifySolution(this.problem, solution);
-    const worst = (r: typeof residuals): number => Math.max(r.primal, r.dual, r.dualityGap);
-    if (this.bestImprecise !== undefined && worst(this.bestImprecise.residuals) <= worst(residuals)) return;
+    const best = this.bestImprecise;
+    if (best !== undefined && worstResidual(best.residuals) <= worstResidual(residuals)) return;
     this.bestImprecise = {
       status: 'imprecise',
       ...solution,
@@ -256,6 +278,15 @@ export class ContinuousSolve {
   private imprecise(meter: WorkMeter): SolveResult {
     return { ...this.bestImprecise!, ...this.effort(meter) };
   }
+
+  private acceptedNow(meter: WorkMeter): OptimalResult | undefined {
+    return this.accepted === undefined ? undefined : { ...this.accepted, ...this.effort(meter) };
+  }
+}
+
+/** Of those that decide whether an optimum is accepted. */
+function worstResidual({ primal, dual, dualityGap }: Residuals): number {
+  return Math.max(primal, dual, dualityGap);
 }
 
 /** A copy with 0 in place of components below a share of the largest magnitude. */
