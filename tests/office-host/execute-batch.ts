@@ -116,8 +116,10 @@ class Batch {
       }
       case pathTypes.indexer: {
         const [key] = this.argumentsOf(path.ArgumentInfo);
-        if (parent.kind.index === undefined) throw unknownMember(parent, 'getItem');
-        return parent.kind.index(parent.target, this.session, key);
+        const getItem = parent.kind.methods?.GetItem;
+        const item = getItem?.(parent.target, this.session, key);
+        if (!(item instanceof HostObject)) throw unknownMember(parent, 'getItem');
+        return item;
       }
       default:
         throw new HostError('InvalidObjectPath', path.Name);

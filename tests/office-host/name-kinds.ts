@@ -27,7 +27,6 @@ export const namedItemCollectionKind: ObjectKind<NamesTarget> = {
   name: 'NamedItemCollection',
   items: ({ scope }, { workbook }) =>
     workbook.namesOf(scope).map((name) => HostObject.of(namedItemKind, name)),
-  index: nameObject,
   methods: {
     GetItem: nameObject,
     GetItemOrNullObject: ({ scope }, { workbook }, key) => {

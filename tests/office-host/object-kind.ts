@@ -28,12 +28,11 @@ export interface ObjectKind<T> {
   readonly get?: Readonly<Record<string, (target: T, session: HostSession) => unknown>>;
   readonly set?: Readonly<Record<string, (target: T, value: unknown, session: HostSession) => void>>;
   readonly objects?: Readonly<Record<string, (target: T, session: HostSession) => HostObject | null>>;
-  /** A HostObject, null for a null object, or a plain value. */
+  /** A HostObject, null for a null object, or a plain value. GetItem serves where the library uses an index too. */
   readonly methods?: Readonly<
     Record<string, (target: T, session: HostSession, ...args: unknown[]) => unknown>
   >;
   readonly items?: (target: T, session: HostSession) => readonly HostObject[];
-  readonly index?: (target: T, session: HostSession, key: unknown) => HostObject;
 }
 
 /** An object of some kind, whose members can be used without knowing which. */

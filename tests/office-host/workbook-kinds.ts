@@ -60,7 +60,6 @@ function sheetObject(session: HostSession, key: unknown): HostObject {
 const worksheetCollectionKind: ObjectKind<Only> = {
   name: 'WorksheetCollection',
   items: (_, { workbook }) => workbook.sheets.map((sheet) => HostObject.of(worksheetKind, sheet)),
-  index: (_, session, key) => sheetObject(session, key),
   methods: {
     GetItem: (_, session, key) => sheetObject(session, key),
     GetItemOrNullObject: (_, { workbook }, key) => {
@@ -119,7 +118,6 @@ const namespaceOf = (xml: string): string => /<[^>!?]*?\sxmlns="([^"]*)"/.exec(x
 const customXmlPartCollectionKind: ObjectKind<Only> = {
   name: 'CustomXmlPartCollection',
   items: (_, { workbook }) => workbook.xmlParts.map((part) => HostObject.of(customXmlPartKind, part)),
-  index: (_, session, key) => xmlPartObject(session, key),
   methods: {
     GetItem: (_, session, key) => xmlPartObject(session, key),
     GetByNamespace: (_, __, namespace) =>
@@ -143,8 +141,8 @@ const customXmlPartScopedCollectionKind: ObjectKind<{ readonly namespace: string
     workbook.xmlParts
       .filter(({ xml }) => namespaceOf(xml) === target.namespace)
       .map((part) => HostObject.of(customXmlPartKind, part)),
-  index: (_target, session, key) => xmlPartObject(session, key),
   methods: {
+    GetItem: (_target, session, key) => xmlPartObject(session, key),
     GetOnlyItemOrNullObject: (target, { workbook }) => {
       const found = workbook.xmlParts.filter(({ xml }) => namespaceOf(xml) === target.namespace);
       return found.length === 1 ? HostObject.of(customXmlPartKind, found[0]) : null;
@@ -191,7 +189,6 @@ interface SettingTarget {
 const settingCollectionKind: ObjectKind<Only> = {
   name: 'SettingCollection',
   items: (_, { workbook }) => [...workbook.settings.keys()].map((key) => HostObject.of(settingKind, { key })),
-  index: (_, session, key) => settingObject(session, key),
   methods: {
     GetItem: (_, session, key) => settingObject(session, key),
     GetItemOrNullObject: (_, { workbook }, key) =>

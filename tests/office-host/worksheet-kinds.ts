@@ -166,7 +166,6 @@ export const tableCollectionKind: ObjectKind<TablesTarget> = {
     workbook.tables
       .filter((table) => sheet === undefined || table.sheet === sheet)
       .map((table) => HostObject.of(tableKind, table)),
-  index: (_target, { workbook }, key) => tableObject(workbook.tables, key),
   methods: {
     GetItem: (_target, { workbook }, key) => tableObject(workbook.tables, key),
     GetItemOrNullObject: (_target, { workbook }, key) => {
@@ -237,10 +236,12 @@ const pivotTableCollectionKind: ObjectKind<HostSheet> = {
   name: 'PivotTableCollection',
   items: (sheet) =>
     sheet.pivotRanges.map((range, position) => HostObject.of(pivotTableKind, { sheet, range, position })),
-  index: (sheet, _session, key) => {
-    const position = sheet.pivotRanges.findIndex((_, at) => pivotName(at) === key);
-    if (position < 0) throw new HostError('ItemNotFound', 'PivotTableCollection.getItem');
-    return HostObject.of(pivotTableKind, { sheet, range: sheet.pivotRanges[position], position });
+  methods: {
+    GetItem: (sheet, _session, key) => {
+      const position = sheet.pivotRanges.findIndex((_, at) => pivotName(at) === key);
+      if (position < 0) throw new HostError('ItemNotFound', 'PivotTableCollection.getItem');
+      return HostObject.of(pivotTableKind, { sheet, range: sheet.pivotRanges[position], position });
+    },
   },
 };
 
@@ -250,12 +251,21 @@ const pivotTableKind: ObjectKind<PivotTarget> = {
   name: 'PivotTable',
   identity: ({ position }) => ({ Id: pivotName(position) }),
   get: { Id: ({ position }) => pivotName(position), Name: ({ position }) => pivotName(position) },
-  objects: { Layout: (pivot) => HostObject.of(pivotLayoutKind, pivot) },
+  objects: {
+    Layout: (pivot) => HostObject.of(pivotLayoutKind, pivot),
+    FilterHierarchies: (pivot) => HostObject.of(filterHierarchyCollectionKind, pivot),
+  },
 };
 
 const pivotLayoutKind: ObjectKind<PivotTarget> = {
   name: 'PivotLayout',
   methods: { GetRange: ({ sheet, range }) => rangeObject(sheet, range) },
+};
+
+/** PivotTables of the far end have no filters of their own above them. */
+const filterHierarchyCollectionKind: ObjectKind<PivotTarget> = {
+  name: 'FilterPivotHierarchyCollection',
+  methods: { GetCount: () => 0 },
 };
 
 interface CommentTarget {

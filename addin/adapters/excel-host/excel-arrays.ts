@@ -53,7 +53,12 @@ export function markArraysByText(sheet: ExcelSheet): void {
 
 /** A copied formula with such a reference would differ from cell to cell. */
 function hasRelativeReference(formula: string): boolean {
-  const withoutTexts = formula.replace(/"[^"]*"/g, '');
+  // Texts, sheets' names and tables' columns may look like references; a table's own row shows as the same everywhere.
+  let withoutTexts = formula.replace(/"[^"]*"/g, '').replace(/'(?:[^']|'')*'!/g, '');
+  for (let before = ''; before !== withoutTexts;) {
+    before = withoutTexts;
+    withoutTexts = before.replace(/\[[^[\]]*\]/g, '');
+  }
   return /(^|[^A-Za-z0-9_$.])[A-Za-z]{1,3}[0-9]{1,7}(?![A-Za-z0-9_.(])/.test(withoutTexts);
 }
 
