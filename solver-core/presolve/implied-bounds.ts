@@ -8,7 +8,8 @@
  * applying an interior point method", INFORMS J. on Computing 9, for their use with free columns.
  */
 import { feasibilitySlack } from './feasibility-slack';
-import { listEnd, type PresolveWorkspace } from './presolve-workspace';
+import { listEnd } from './linked-entries';
+import type { PresolveWorkspace } from './presolve-workspace';
 
 /**
  * Does x_j stay within its bounds for all values of the other columns, when the row is to be met as an equation with

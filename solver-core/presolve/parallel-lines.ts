@@ -9,7 +9,8 @@
  */
 import { tolerances } from '../control/tolerances';
 import type { ReadonlyFloat64Array, ReadonlyInt32Array } from '../numerics/typed-array-views';
-import { listEnd, type PresolveWorkspace } from './presolve-workspace';
+import { listEnd } from './linked-entries';
+import type { PresolveWorkspace } from './presolve-workspace';
 
 /** Lines parallel to the leader: entries of `line` = ratio × entries of the leader. */
 export interface ParallelGroup {

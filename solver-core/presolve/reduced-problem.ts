@@ -10,7 +10,8 @@ import type { SolutionValues } from '../linear-program/solve-result';
 import type { ReadonlyFloat64Array } from '../numerics/typed-array-views';
 import { PostsolveSolution } from './postsolve-solution';
 import type { PostsolveStack } from './postsolve-stack';
-import { listEnd, type PresolveWorkspace } from './presolve-workspace';
+import { listEnd } from './linked-entries';
+import type { PresolveWorkspace } from './presolve-workspace';
 import type { ReductionName } from './reduction';
 
 /** A solution carried back: what follows from it on the stated problem (activities …) is for the caller to compute. */

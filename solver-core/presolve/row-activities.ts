@@ -6,7 +6,8 @@
  */
 import { tolerances } from '../control/tolerances';
 import { feasibilitySlack } from './feasibility-slack';
-import { listEnd, type PresolveWorkspace } from './presolve-workspace';
+import { listEnd } from './linked-entries';
+import type { PresolveWorkspace } from './presolve-workspace';
 
 export class RowActivities {
   // Length m each, valid where isCurrent is 1.

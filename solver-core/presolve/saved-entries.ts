@@ -3,7 +3,8 @@
  * each record holds spans. Appended to while presolve runs, read while postsolve does.
  */
 import { grownFloat64, grownInt32 } from '../numerics/growable-arrays';
-import { listEnd, type PresolveWorkspace } from './presolve-workspace';
+import { listEnd } from './linked-entries';
+import type { PresolveWorkspace } from './presolve-workspace';
 
 /** Places start … end − 1 of the store. */
 export interface Span {

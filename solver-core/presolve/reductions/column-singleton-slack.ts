@@ -16,7 +16,8 @@
 import { tolerances } from '../../control/tolerances';
 import { VariableStatus } from '../../linear-program/basis';
 import { statusAt, statusWhenFixed, type PostsolveSolution, type Side } from '../postsolve-solution';
-import { listEnd, type PresolveWorkspace } from '../presolve-workspace';
+import { listEnd } from '../linked-entries';
+import type { PresolveWorkspace } from '../presolve-workspace';
 import type { RowReduction } from '../reduction';
 import type { Span } from '../saved-entries';
 

@@ -13,7 +13,8 @@
  */
 import { tolerances } from '../../control/tolerances';
 import { statusAt, type Side } from '../postsolve-solution';
-import { listEnd, type PresolveWorkspace } from '../presolve-workspace';
+import { listEnd } from '../linked-entries';
+import type { PresolveWorkspace } from '../presolve-workspace';
 import type { Finding, ProblemReduction } from '../reduction';
 import { type ColumnAtValue, restoreColumnAtValue, takeOutAtValue } from './fixed-column';
 

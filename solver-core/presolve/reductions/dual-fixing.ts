@@ -13,7 +13,8 @@
  */
 import { tolerances } from '../../control/tolerances';
 import { VariableStatus } from '../../linear-program/basis';
-import { listEnd, type PresolveWorkspace } from '../presolve-workspace';
+import { listEnd } from '../linked-entries';
+import type { PresolveWorkspace } from '../presolve-workspace';
 import type { ColumnReduction } from '../reduction';
 import { type ColumnAtValue, restoreColumnAtValue, takeOutAtValue } from './fixed-column';
 

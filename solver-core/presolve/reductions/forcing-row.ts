@@ -9,7 +9,8 @@
  */
 import { VariableStatus } from '../../linear-program/basis';
 import { statusAt, type Side } from '../postsolve-solution';
-import { listEnd, type PresolveWorkspace } from '../presolve-workspace';
+import { listEnd } from '../linked-entries';
+import type { PresolveWorkspace } from '../presolve-workspace';
 import type { RowReduction } from '../reduction';
 import type { Span } from '../saved-entries';
 import { fixedColumn, takeOutAtValue } from './fixed-column';

@@ -11,7 +11,8 @@ import { VariableStatus } from '../../linear-program/basis';
 import { isImpliedFreeAt } from '../implied-bounds';
 import { statusAt, statusWhenFixed, type Side } from '../postsolve-solution';
 import type { PostsolveStack } from '../postsolve-stack';
-import { listEnd, type PresolveWorkspace } from '../presolve-workspace';
+import { listEnd } from '../linked-entries';
+import type { PresolveWorkspace } from '../presolve-workspace';
 import type { RowReduction } from '../reduction';
 import type { Span } from '../saved-entries';
 

@@ -11,7 +11,8 @@ import { tolerances } from '../../control/tolerances';
 import { VariableStatus } from '../../linear-program/basis';
 import { isImpliedFree } from '../implied-bounds';
 import { statusWhenFixed } from '../postsolve-solution';
-import { listEnd, type PresolveWorkspace } from '../presolve-workspace';
+import { listEnd } from '../linked-entries';
+import type { PresolveWorkspace } from '../presolve-workspace';
 import type { ColumnReduction } from '../reduction';
 import type { Span } from '../saved-entries';
 

@@ -10,7 +10,8 @@
  */
 import { VariableStatus } from '../../linear-program/basis';
 import { statusAt, type Side } from '../postsolve-solution';
-import { listEnd, type PresolveWorkspace } from '../presolve-workspace';
+import { listEnd } from '../linked-entries';
+import type { PresolveWorkspace } from '../presolve-workspace';
 import type { ColumnReduction } from '../reduction';
 import type { Span } from '../saved-entries';
 import { freeDirections } from './dual-fixing';

@@ -9,7 +9,7 @@
 import { tolerances } from '../../control/tolerances';
 import { VariableStatus } from '../../linear-program/basis';
 import { statusAt } from '../postsolve-solution';
-import { type PresolveWorkspace } from '../presolve-workspace';
+import type { PresolveWorkspace } from '../presolve-workspace';
 import type { PresolveEnd, RowReduction } from '../reduction';
 
 interface SingletonRow {

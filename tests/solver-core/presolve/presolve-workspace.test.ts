@@ -1,4 +1,5 @@
-import { listEnd, PresolveWorkspace } from '../../../solver-core/presolve/presolve-workspace';
+import { listEnd } from '../../../solver-core/presolve/linked-entries';
+import { PresolveWorkspace } from '../../../solver-core/presolve/presolve-workspace';
 import { lp } from '../../support/lp-notation';
 
 /** The active entries by row, as text. */
@@ -36,7 +37,7 @@ describe('the workspace of presolve', () => {
       '-24 <= -2 x1 + -4 x0 <= Infinity',
     ]);
     expect(workspace.constant).toBe(-4);
-    expect([workspace.columnLength[2], workspace.activeColumnCount]).toEqual([0, 2]);
+    expect([workspace.columnLength[2], workspace.isColumnActive(2)]).toEqual([0, false]);
   });
 
   it('eliminates a column by an equation; entries appear, change, and cancel', () => {
