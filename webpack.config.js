@@ -1,5 +1,8 @@
+import { readFileSync } from 'node:fs';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
+import CopyPlugin from 'copy-webpack-plugin';
+import HtmlPlugin from 'html-webpack-plugin';
 import webpack from 'webpack';
 
 const root = path.dirname(fileURLToPath(import.meta.url));
@@ -43,6 +46,62 @@ const moduleOutput = (filename, library) => ({
   ...(library ? { library: { type: 'module' } } : {}),
 });
 
+const fromManifest = (file) => path.join(root, 'manifest', file);
+const settings = JSON.parse(readFileSync(fromManifest('settings.json'), 'utf8'));
+
+/** The manifest for another origin; a variant of its own has an id and a name of its own, and stands beside the real one. */
+const manifestFor = (origin, variant) => (content) => {
+  const moved = content.toString().replaceAll(settings.manifestOrigin, origin);
+  return variant === undefined
+    ? moved
+    : moved
+        .replace(settings.id, variant.id)
+        .replace('<DisplayName DefaultValue="Planrow"/>', `<DisplayName DefaultValue="${variant.name}"/>`);
+};
+
+/** The static folder that a firm puts on its server: pages, scripts, icons and manifests. */
+const paneBuild = (mode) => ({
+  ...shared,
+  name: 'pane',
+  mode,
+  target: 'web',
+  entry: { pane: './addin/pane/main.ts' },
+  output: {
+    path: path.join(output, 'pane'),
+    filename: '[name].[contenthash:8].js',
+    chunkFilename: '[name].[contenthash:8].js',
+    clean: true,
+  },
+  optimization: {
+    // What page and worker both need is one file, fetched once.
+    splitChunks: { chunks: 'all', minSize: 8_000 },
+  },
+  plugins: [
+    new HtmlPlugin({ filename: 'pane.html', template: './addin/pane/pane.html', scriptLoading: 'defer' }),
+    new CopyPlugin({
+      patterns: [
+        { from: './addin/pane/pages', to: '.' },
+        { from: './manifest/icons/*.png', to: 'icons/[name][ext]' },
+        {
+          from: fromManifest('manifest.xml'),
+          to: 'manifest.xml',
+          transform: manifestFor(process.env.PLANROW_ORIGIN ?? settings.productionOrigin),
+        },
+        {
+          from: fromManifest('manifest.xml'),
+          to: 'manifest-development.xml',
+          transform: manifestFor(settings.development.origin, settings.development),
+        },
+      ],
+    }),
+  ],
+  devServer: {
+    port: Number(new URL(settings.development.origin).port),
+    headers: { 'Access-Control-Allow-Origin': '*' },
+    client: { overlay: false },
+  },
+});
+
 export default (_env, argv) => {
   const mode = argv.mode ?? 'production';
   return [
@@ -70,13 +129,6 @@ export default (_env, argv) => {
         new webpack.optimize.LimitChunkCountPlugin({ maxChunks: 1 }),
       ],
     },
-    {
-      ...shared,
-      name: 'pane',
-      mode,
-      target: 'web',
-      entry: './addin/pane/main.ts',
-      output: { path: path.join(output, 'pane'), filename: 'pane.js' },
-    },
+    paneBuild(mode),
   ];
 };

@@ -2,11 +2,10 @@
  * The frame of the pane: theme, plan at hand, the two views, the bar that solves, and the live region.
  */
 import {
+  Button,
   FluentProvider,
-  Spinner,
-  Tab,
-  TabList,
-  Text,
+  mergeClasses,
+  ProgressBar,
   webDarkTheme,
   webLightTheme,
 } from '@fluentui/react-components';
@@ -41,7 +40,7 @@ function PaneFrame({ state, dispatch }: { state: PaneState; dispatch: Dispatch }
       <header className={styles.header}>
         <h1 className={styles.title}>{paneTexts.title}</h1>
         {state.workbook !== null && <PlanChooser state={state} dispatch={dispatch} />}
-        {state.chosen !== null && <ViewTabs state={state} dispatch={dispatch} />}
+        {state.chosen !== null && <ViewSwitch state={state} dispatch={dispatch} />}
       </header>
       <main className={styles.main}>
         {state.failure !== null && <FailureBar failure={state.failure} state={state} dispatch={dispatch} />}
@@ -56,43 +55,46 @@ function PaneFrame({ state, dispatch }: { state: PaneState; dispatch: Dispatch }
   );
 }
 
-function ViewTabs({ state, dispatch }: { state: PaneState; dispatch: Dispatch }): ReactNode {
+/** Two buttons of which one is down: the view that is shown. */
+function ViewSwitch({ state, dispatch }: { state: PaneState; dispatch: Dispatch }): ReactNode {
+  const styles = usePaneStyles();
   return (
-    <TabList
-      size="small"
-      aria-label={paneTexts.parts}
-      selectedValue={state.view}
-      onTabSelect={(_event, { value }) => dispatch({ kind: 'view-chosen', view: value as PaneState['view'] })}
-    >
-      <Tab value="statement" id="tab-statement" aria-controls="view">
-        {paneTexts.statement}
-      </Tab>
-      <Tab value="result" id="tab-result" aria-controls="view">
-        {paneTexts.result}
-      </Tab>
-    </TabList>
+    <div role="group" aria-label={paneTexts.parts} className={styles.viewSwitch}>
+      {(['statement', 'result'] as const).map((view) => (
+        <Button
+          key={view}
+          size="small"
+          appearance="subtle"
+          aria-pressed={state.view === view}
+          className={mergeClasses(styles.viewButton, state.view === view && styles.viewShown)}
+          onClick={() => dispatch({ kind: 'view-chosen', view })}
+        >
+          {paneTexts[view]}
+        </Button>
+      ))}
+    </div>
   );
 }
 
 function MainView({ state, dispatch }: { state: PaneState; dispatch: Dispatch }): ReactNode {
+  const styles = usePaneStyles();
   const { workbook, chosen, view } = state;
   if (workbook === null) {
     return state.activity.kind === 'reading' ? (
-      <Spinner size="small" label={paneTexts.starting} />
+      <div className={styles.tightStack}>
+        <ProgressBar aria-label={paneTexts.starting} />
+        {paneTexts.starting}
+      </div>
     ) : (
-      <Text>{paneTexts.purpose}</Text>
+      <p>{paneTexts.purpose}</p>
     );
   }
   if (chosen === null) {
-    return <Text>{paneTexts.noPlanYet}</Text>;
+    return <p>{paneTexts.noPlanYet}</p>;
   }
-  return (
-    <div id="view" role="tabpanel" aria-labelledby={`tab-${view}`}>
-      {view === 'statement' ? (
-        <StatementView chosen={chosen} state={state} dispatch={dispatch} />
-      ) : (
-        <ResultView state={state} dispatch={dispatch} />
-      )}
-    </div>
+  return view === 'statement' ? (
+    <StatementView chosen={chosen} state={state} dispatch={dispatch} />
+  ) : (
+    <ResultView state={state} dispatch={dispatch} />
   );
 }

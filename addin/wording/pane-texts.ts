@@ -128,6 +128,7 @@ export const senseTexts: Readonly<Record<PlanSense, string>> = {
 export const paneTexts = {
   title: 'Planrow',
   starting: 'Reading the workbook …',
+  outsideHost: 'This page is the pane of an add-in. Open it from the Home tab of your spreadsheet program.',
   purpose: 'Finds the best plan in the workbook you already keep.',
   plan: 'Plan',
   noPlanYet: 'This workbook holds no plan yet. Start one, then point at the cells that make it up.',
@@ -198,6 +199,7 @@ export const paneTexts = {
   showCell: (cell: CellAddress): string => `Show ${formatCellAddress(cell)}`,
   pickRelation: (cell: CellAddress): string => `Relation for ${formatCellAddress(cell)}`,
   pickOne: 'Pick a relation',
+  pickSense: 'Pick one',
   noResultYet: 'Not solved yet. Press Solve when the statement is complete.',
   objective: 'Objective',
   objectiveBefore: (before: number, after: number): string => {

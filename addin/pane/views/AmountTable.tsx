@@ -120,7 +120,7 @@ export function AmountTable<Line>({ label, lines, columns, onShow }: Props<Line>
               role="row"
               aria-rowindex={position + 2}
               aria-selected={isActive}
-              className={mergeClasses(styles.tableLine, styles.bodyLine, isActive && styles.activeLine)}
+              className={mergeClasses(styles.tableLine, styles.bodyLine)}
               style={{ position: 'absolute', top: `${position * lineHeight}px`, left: 0, right: 0 }}
               onClick={() => {
                 setActive(position);

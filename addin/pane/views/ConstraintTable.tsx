@@ -1,7 +1,7 @@
 /**
  * The constraint rows of a solved plan: both sides, slack, dual value; binding rows are marked by a word in a frame.
  */
-import { Badge, Checkbox, Field, Input, Text } from '@fluentui/react-components';
+import { Checkbox, Field, Input } from '@fluentui/react-components';
 import { useMemo, useState, type ReactNode } from 'react';
 import type { ConstraintOutcome } from '../../domain/results-to-sheet/plan-outcome';
 import { formatCellAddress } from '../../domain/sheet/cell-address';
@@ -48,7 +48,7 @@ export function ConstraintTable(props: {
           })
         }
       />
-      <Text className={styles.gloss}>{paneTexts.rowsShown(shown.length, lines.length)}</Text>
+      <p className={styles.gloss}>{paneTexts.rowsShown(shown.length, lines.length)}</p>
     </section>
   );
 }
@@ -81,9 +81,7 @@ function RowLabel({ line }: { line: ConstraintOutcome }): ReactNode {
       <div className={styles.clipped} title={`${line.label}, ${formatCellAddress(line.cell)}`}>
         {line.isBinding && (
           <>
-            <Badge size="small" appearance="outline" shape="rounded" color="informative">
-              {paneTexts.binding}
-            </Badge>{' '}
+            <span className={styles.badge}>{paneTexts.binding}</span>{' '}
           </>
         )}
         {line.label}

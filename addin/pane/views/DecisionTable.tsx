@@ -1,7 +1,7 @@
 /**
  * The decision cells of a solved plan: optimum, what the cell held before, reduced cost.
  */
-import { Field, Input, Text } from '@fluentui/react-components';
+import { Field, Input } from '@fluentui/react-components';
 import { useMemo, useState, type ReactNode } from 'react';
 import type { DecisionOutcome } from '../../domain/results-to-sheet/plan-outcome';
 import { formatCellAddress } from '../../domain/sheet/cell-address';
@@ -39,7 +39,7 @@ export function DecisionTable(props: {
           })
         }
       />
-      <Text className={styles.gloss}>{paneTexts.rowsShown(shown.length, lines.length)}</Text>
+      <p className={styles.gloss}>{paneTexts.rowsShown(shown.length, lines.length)}</p>
     </section>
   );
 }

@@ -1,7 +1,7 @@
 /**
  * What went wrong outside the plan, with the ways out of it.
  */
-import { Button, MessageBar, MessageBarActions, MessageBarBody, Text } from '@fluentui/react-components';
+import { Button, MessageBar, MessageBarActions, MessageBarBody } from '@fluentui/react-components';
 import type { ReactNode } from 'react';
 import { paneTexts } from '../../wording/pane-texts';
 import type { Failure, PaneState } from '../pane-state';
@@ -20,10 +20,8 @@ export function FailureBar({ failure, state, dispatch }: Props): ReactNode {
   return (
     <MessageBar intent="error" layout="multiline" style={{ marginBottom: '12px' }} politeness="polite">
       <MessageBarBody className={styles.breakable}>
-        <Text>{failure.sentence}</Text>
-        {failure.code === 'half-written' && ranges.length > 0 && (
-          <Text block>{paneTexts.cellsBetween(ranges)}</Text>
-        )}
+        <p>{failure.sentence}</p>
+        {failure.code === 'half-written' && ranges.length > 0 && <p>{paneTexts.cellsBetween(ranges)}</p>}
       </MessageBarBody>
       <MessageBarActions>
         <WaysOut failure={failure} state={state} dispatch={dispatch} />

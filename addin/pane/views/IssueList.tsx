@@ -2,7 +2,7 @@
  * What is wrong with the statement, sorted by place. Each issue shows its cell when pressed; a relation that is
  * missing or unknown is picked from a list right there.
  */
-import { Badge, Link, MessageBar, MessageBarBody, Select, Text } from '@fluentui/react-components';
+import { Link, mergeClasses, MessageBar, MessageBarBody, Select } from '@fluentui/react-components';
 import type { ReactNode } from 'react';
 import type { ModelIssue } from '../../domain/model-from-sheet/model-issue';
 import type { Relation } from '../../domain/model-from-sheet/sheet-model';
@@ -43,7 +43,7 @@ export function IssueList(props: {
         ))}
       </ul>
       {check.issues.length > mostShown && (
-        <Text className={styles.gloss}>{paneTexts.rowsShown(mostShown, check.issues.length)}</Text>
+        <p className={styles.gloss}>{paneTexts.rowsShown(mostShown, check.issues.length)}</p>
       )}
     </section>
   );
@@ -61,7 +61,7 @@ function IssueItem(props: {
     <li className={styles.tightStack}>
       <div>
         <SeverityBadge severity={issue.severity} />{' '}
-        <Text className={styles.breakable}>{sentenceOfIssue(issue)}</Text>
+        <span className={styles.breakable}>{sentenceOfIssue(issue)}</span>
       </div>
       {cell !== null && (
         <div className={styles.row}>
@@ -93,15 +93,12 @@ function IssueItem(props: {
 }
 
 /** Errors and warnings differ by word and shape, not by colour alone. */
-export function SeverityBadge({ severity }: { severity: ModelIssue['severity'] }): ReactNode {
+function SeverityBadge({ severity }: { severity: ModelIssue['severity'] }): ReactNode {
+  const styles = usePaneStyles();
   return severity === 'error' ? (
-    <Badge appearance="filled" color="danger" shape="square">
-      {paneTexts.error}
-    </Badge>
+    <span className={mergeClasses(styles.badge, styles.errorBadge)}>{paneTexts.error}</span>
   ) : (
-    <Badge appearance="outline" color="important" shape="rounded">
-      {paneTexts.warning}
-    </Badge>
+    <span className={styles.badge}>{paneTexts.warning}</span>
   );
 }
 

@@ -2,7 +2,7 @@
  * One part of the statement: what it says that it read, a place to type its cells, a button that takes the selection,
  * and the question that is asked before it is pointed elsewhere.
  */
-import { Button, Field, Input, Text } from '@fluentui/react-components';
+import { Button, Field, Input } from '@fluentui/react-components';
 import { useEffect, useState, type FormEvent, type ReactNode } from 'react';
 import type { StatedPart } from '../../domain/statement-to-sheet/describe-plans';
 import { paneTexts, partLabel, partLabels, readingText } from '../../wording/pane-texts';
@@ -150,9 +150,9 @@ function PointElsewhere(props: {
         if (key === 'Escape') dispatch({ kind: 'question-cancelled' });
       }}
     >
-      <Text weight="semibold">{paneTexts.pointElsewhere}</Text>
-      <Text className={styles.breakable}>{paneTexts.pointFrom(question.from)}</Text>
-      <Text className={styles.breakable}>{paneTexts.pointTo(question.to)}</Text>
+      <p className={styles.strong}>{paneTexts.pointElsewhere}</p>
+      <p className={styles.breakable}>{paneTexts.pointFrom(question.from)}</p>
+      <p className={styles.breakable}>{paneTexts.pointTo(question.to)}</p>
       <div className={styles.row}>
         <Button
           size="small"

@@ -1,7 +1,7 @@
 /**
  * The plan at hand, and what can be done with whole plans: start, duplicate, rename, delete.
  */
-import { Button, Field, Input, Select, Text, Toolbar, ToolbarButton } from '@fluentui/react-components';
+import { Button, Field, Input, Select } from '@fluentui/react-components';
 import type { FormEvent, ReactNode } from 'react';
 import { nameFaultText, paneTexts } from '../../wording/pane-texts';
 import type { PaneState, Question } from '../pane-state';
@@ -48,37 +48,48 @@ export function PlanChooser({ state, dispatch }: Props): ReactNode {
 }
 
 function PlanActions({ state, dispatch }: Props): ReactNode {
+  const styles = usePaneStyles();
   const isBusy = state.activity.kind !== 'idle';
   const isListed = state.plans.some(({ listing }) => listing.name === state.chosen?.listing.name);
   return (
-    <Toolbar size="small" aria-label={paneTexts.planActions} style={{ padding: 0, flexWrap: 'wrap' }}>
-      <ToolbarButton
-        disabled={isBusy}
+    <div role="group" aria-label={paneTexts.planActions} className={styles.buttons}>
+      <Button
+        size="small"
+        disabledFocusable={isBusy}
         onClick={() => dispatch({ kind: 'name-asked', purpose: 'new' })}
         appearance={state.chosen === null ? 'primary' : 'subtle'}
       >
         {paneTexts.newPlan}
-      </ToolbarButton>
+      </Button>
       {isListed && (
         <>
-          <ToolbarButton
-            disabled={isBusy}
+          <Button
+            size="small"
+            appearance="subtle"
+            disabledFocusable={isBusy}
             onClick={() => dispatch({ kind: 'name-asked', purpose: 'duplicate' })}
           >
             {paneTexts.duplicate}
-          </ToolbarButton>
-          <ToolbarButton
-            disabled={isBusy}
+          </Button>
+          <Button
+            size="small"
+            appearance="subtle"
+            disabledFocusable={isBusy}
             onClick={() => dispatch({ kind: 'name-asked', purpose: 'rename' })}
           >
             {paneTexts.rename}
-          </ToolbarButton>
-          <ToolbarButton disabled={isBusy} onClick={() => dispatch({ kind: 'deletion-asked' })}>
+          </Button>
+          <Button
+            size="small"
+            appearance="subtle"
+            disabledFocusable={isBusy}
+            onClick={() => dispatch({ kind: 'deletion-asked' })}
+          >
             {paneTexts.remove}
-          </ToolbarButton>
+          </Button>
         </>
       )}
-    </Toolbar>
+    </div>
   );
 }
 
@@ -137,9 +148,9 @@ function DeletionForm(props: {
       aria-label={paneTexts.deletePlan(planName)}
       onKeyDown={onEscape(dispatch)}
     >
-      <Text weight="semibold">{paneTexts.deletePlan(planName)}</Text>
-      <Text>{paneTexts.deleteMeans}</Text>
-      {users.length > 0 && <Text className={styles.breakable}>{paneTexts.nameUsers(users)}</Text>}
+      <p className={styles.strong}>{paneTexts.deletePlan(planName)}</p>
+      <p>{paneTexts.deleteMeans}</p>
+      {users.length > 0 && <p className={styles.breakable}>{paneTexts.nameUsers(users)}</p>}
       <div className={styles.row}>
         <Button size="small" autoFocus onClick={() => dispatch({ kind: 'question-cancelled' })}>
           {paneTexts.cancel}

@@ -2,7 +2,7 @@
  * The result of the last solve: status in words, objective and change, tables of decisions and constraint rows, where
  * results stand, and what is worth knowing about them.
  */
-import { Link, MessageBar, MessageBarBody, Text } from '@fluentui/react-components';
+import { Link, MessageBar, MessageBarBody } from '@fluentui/react-components';
 import type { ReactNode } from 'react';
 import type { SolvedOutcome } from '../../domain/results-to-sheet/plan-outcome';
 import type { ResultWrites } from '../../domain/results-to-sheet/plan-result-writes';
@@ -27,7 +27,7 @@ export function ResultView({ state, dispatch }: Props): ReactNode {
   const styles = usePaneStyles();
   const { result } = state;
   if (result === null) {
-    return <Text>{paneTexts.noResultYet}</Text>;
+    return <p>{paneTexts.noResultYet}</p>;
   }
   const { outcome } = result;
   return (
@@ -50,7 +50,7 @@ export function ResultView({ state, dispatch }: Props): ReactNode {
       )}
       <WrittenLines result={result} dispatch={dispatch} />
       <NoticeLines outcome={outcome} />
-      {outcome.objective !== null && <Text className={styles.gloss}>{caution}</Text>}
+      {outcome.objective !== null && <p className={styles.gloss}>{caution}</p>}
     </div>
   );
 }
@@ -61,15 +61,15 @@ function StatusLines({ outcome }: { outcome: SolvedOutcome }): ReactNode {
   const binding = constraints.filter(({ isBinding }) => isBinding).length;
   return (
     <section className={styles.tightStack} aria-label={paneTexts.result}>
-      <Text weight="semibold">{statusSentence(status, objective !== null)}</Text>
+      <p className={styles.strong}>{statusSentence(status, objective !== null)}</p>
       {objective !== null && (
         <>
-          <Text>{paneTexts.objective}</Text>
+          <p>{paneTexts.objective}</p>
           <span className={styles.figure}>{amountText(objective)}</span>
           {objectiveBefore !== null && (
-            <Text className={styles.gloss}>{paneTexts.objectiveBefore(objectiveBefore, objective)}</Text>
+            <p className={styles.gloss}>{paneTexts.objectiveBefore(objectiveBefore, objective)}</p>
           )}
-          <Text className={styles.gloss}>{bindingText(binding, constraints.length)}</Text>
+          <p className={styles.gloss}>{bindingText(binding, constraints.length)}</p>
         </>
       )}
     </section>
@@ -81,7 +81,7 @@ function WrittenLines({ result, dispatch }: { result: ShownResult; dispatch: Dis
   const { isWritten, putBack } = result;
   const { writes } = result.outcome;
   if (writes === null || !isWritten) {
-    return <Text>{paneTexts.notWritten}</Text>;
+    return <p>{paneTexts.notWritten}</p>;
   }
   return (
     <section className={styles.section} aria-labelledby="written-heading">
@@ -89,12 +89,12 @@ function WrittenLines({ result, dispatch }: { result: ShownResult; dispatch: Dis
         {paneTexts.written}
       </h2>
       {putBack === null ? (
-        <Text>{paneTexts.writtenDecisions(writes.decisionCount)}</Text>
+        <p>{paneTexts.writtenDecisions(writes.decisionCount)}</p>
       ) : (
-        <Text className={styles.breakable}>
+        <p className={styles.breakable}>
           {paneTexts.putBackDone(putBack.restoredCount)}
           {putBack.left.length > 0 && ` ${paneTexts.putBackLeft(putBack.left)}`}
-        </Text>
+        </p>
       )}
       <ColumnList columns={writes.columns} dispatch={dispatch} />
     </section>

@@ -1,7 +1,7 @@
 /**
  * The bar at the foot of the pane: check, solve, stop, and how far it has come.
  */
-import { Button, Checkbox, ProgressBar, Text } from '@fluentui/react-components';
+import { Button, Checkbox, ProgressBar } from '@fluentui/react-components';
 import { useEffect, useRef, type ReactNode } from 'react';
 import { paneTexts } from '../../wording/pane-texts';
 import type { Activity, PaneState } from '../pane-state';
@@ -81,12 +81,12 @@ function ProgressLines({ activity }: { activity: Activity }): ReactNode {
     <div className={styles.tightStack}>
       <ProgressBar aria-label={text} />
       <div className={styles.row}>
-        <Text className={styles.grow}>{text}</Text>
+        <span className={styles.grow}>{text}</span>
         {activity.kind === 'solving' && (
-          <Text className={styles.gloss}>
+          <p className={styles.gloss}>
             {activity.progress !== null && `${paneTexts.iterations(activity.progress.iterations)}, `}
             {paneTexts.elapsed(activity.elapsedSeconds)}
-          </Text>
+          </p>
         )}
       </div>
     </div>

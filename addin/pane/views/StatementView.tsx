@@ -1,7 +1,7 @@
 /**
  * The statement of the plan at hand, part by part: what each name refers to, and how to point it at cells.
  */
-import { Button, Field, Radio, RadioGroup, Text } from '@fluentui/react-components';
+import { Button, Field, Select } from '@fluentui/react-components';
 import type { ReactNode } from 'react';
 import type { StatedPlan } from '../../domain/statement-to-sheet/describe-plans';
 import type { PlanSense } from '../../domain/model-from-sheet/sheet-model';
@@ -31,7 +31,7 @@ export function StatementView({ chosen, state, dispatch }: Props): ReactNode {
   const styles = usePaneStyles();
   return (
     <div className={styles.stack}>
-      <Text className={`${styles.gloss} ${styles.breakable}`}>{selectionText(state.selected)}</Text>
+      <p className={`${styles.gloss} ${styles.breakable}`}>{selectionText(state.selected)}</p>
       {state.check !== null && <IssueList check={state.check} state={state} dispatch={dispatch} />}
       <NumberedFields role="Decision" isNeeded chosen={chosen} state={state} dispatch={dispatch} />
       <SenseField chosen={chosen} state={state} dispatch={dispatch} />
@@ -111,16 +111,19 @@ function SenseField({ chosen, state, dispatch }: Props): ReactNode {
         label={`${label} (${gloss})`}
         hint={stated === undefined ? paneTexts.notStated : readingText('Sense', stated.reading)}
       >
-        <RadioGroup
-          layout="horizontal"
+        <Select
+          size="small"
           value={chosen.sense ?? ''}
           // A sense that stands in a cell is the planner's to change there.
           disabled={state.activity.kind !== 'idle' || isInCell}
-          onChange={(_event, { value }) => dispatch({ kind: 'sense-picked', sense: value as PlanSense })}
+          onChange={(_event, { value }) => {
+            if (value !== '') dispatch({ kind: 'sense-picked', sense: value as PlanSense });
+          }}
         >
-          <Radio value="maximise" label={senseTexts.maximise} />
-          <Radio value="minimise" label={senseTexts.minimise} />
-        </RadioGroup>
+          {chosen.sense === null && <option value="">{paneTexts.pickSense}</option>}
+          <option value="maximise">{senseTexts.maximise}</option>
+          <option value="minimise">{senseTexts.minimise}</option>
+        </Select>
       </Field>
     </section>
   );

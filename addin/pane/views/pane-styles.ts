@@ -15,6 +15,7 @@ export const usePaneStyles = makeStyles({
     overflowX: 'hidden',
     backgroundColor: tokens.colorNeutralBackground1,
     color: tokens.colorNeutralForeground1,
+    '& p': { margin: 0 },
   },
   header: {
     display: 'flex',
@@ -37,6 +38,27 @@ export const usePaneStyles = makeStyles({
     overflowY: 'auto',
     padding: `${tokens.spacingVerticalM} ${tokens.spacingHorizontalM}`,
   },
+  viewSwitch: { display: 'flex', gap: tokens.spacingHorizontalXS },
+  viewButton: { borderRadius: 0, borderBottom: '3px solid transparent' },
+  viewShown: {
+    fontWeight: tokens.fontWeightSemibold,
+    borderBottomColor: tokens.colorCompoundBrandStroke,
+  },
+  strong: { fontWeight: tokens.fontWeightSemibold },
+  badge: {
+    display: 'inline-block',
+    padding: '0 5px',
+    border: '1px solid currentColor',
+    borderRadius: tokens.borderRadiusMedium,
+    fontSize: tokens.fontSizeBase100,
+    lineHeight: tokens.lineHeightBase100,
+    fontWeight: tokens.fontWeightSemibold,
+  },
+  errorBadge: {
+    borderRadius: 0,
+    color: tokens.colorPaletteRedForeground1,
+    border: '2px solid currentColor',
+  },
   bar: {
     display: 'flex',
     flexDirection: 'column',
@@ -47,6 +69,7 @@ export const usePaneStyles = makeStyles({
   stack: { display: 'flex', flexDirection: 'column', gap: tokens.spacingVerticalM },
   tightStack: { display: 'flex', flexDirection: 'column', gap: tokens.spacingVerticalXS },
   row: { display: 'flex', flexWrap: 'wrap', alignItems: 'center', gap: tokens.spacingHorizontalS },
+  buttons: { display: 'flex', flexWrap: 'wrap' },
   grow: { flexGrow: 1, minWidth: 0 },
   section: { display: 'flex', flexDirection: 'column', gap: tokens.spacingVerticalS },
   heading: {
@@ -85,6 +108,10 @@ export const usePaneStyles = makeStyles({
     border: `1px solid ${tokens.colorNeutralStroke2}`,
     borderRadius: tokens.borderRadiusMedium,
     '&:focus-visible': { outline: `2px solid ${tokens.colorStrokeFocus2}`, outlineOffset: '1px' },
+    '&:focus-visible [aria-selected="true"]': {
+      outline: `2px solid ${tokens.colorStrokeFocus2}`,
+      outlineOffset: '-2px',
+    },
   },
   tableHead: {
     position: 'sticky',
@@ -106,10 +133,6 @@ export const usePaneStyles = makeStyles({
     cursor: 'pointer',
     borderBottom: `1px solid ${tokens.colorNeutralStroke3}`,
     '&:hover': { backgroundColor: tokens.colorNeutralBackground1Hover },
-  },
-  activeLine: {
-    outline: `2px solid ${tokens.colorStrokeFocus2}`,
-    outlineOffset: '-2px',
   },
   clipped: { overflow: 'hidden', textOverflow: 'ellipsis', whiteSpace: 'nowrap' },
   figureCell: { textAlign: 'right', fontVariantNumeric: 'tabular-nums' },

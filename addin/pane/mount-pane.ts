@@ -1,6 +1,7 @@
 /**
  * Puts the pane into a page: the program behind it, and the views before it.
  */
+import { createElement } from 'react';
 import { createRoot } from 'react-dom/client';
 import type { PaneSurroundings } from './pane-effects';
 import { PaneProgram } from './pane-program';
@@ -9,6 +10,6 @@ import { PlanrowPane } from './PlanrowPane';
 
 export function mountPane(element: Element, surroundings: PaneSurroundings, command: StartCommand): void {
   const program = new PaneProgram(surroundings);
-  createRoot(element).render(<PlanrowPane program={program} isHostDark={surroundings.host.isDark()} />);
+  createRoot(element).render(createElement(PlanrowPane, { program, isHostDark: surroundings.host.isDark() }));
   program.start(command);
 }
