@@ -129,6 +129,7 @@ class Batch {
   private call(object: HostObject, name: string, info: ArgumentInfo | undefined): unknown {
     const method = object.kind.methods?.[name];
     if (method === undefined) throw unknownMember(object, name);
+    this.session.usedMembers.add(`${object.kind.name}.${name}`);
     return method(object.target, this.session, ...this.argumentsOf(info));
   }
 
@@ -171,8 +172,10 @@ class Batch {
         continue;
       }
       const name = memberNamed(kind.get, first);
-      if (name !== undefined) picked[name] = kind.get![name](target, this.session);
-      else if (memberNamed(kind.objects, first) !== undefined) byLead.set(first, []);
+      if (name !== undefined) {
+        this.session.usedMembers.add(`${kind.name}.${name}`);
+        picked[name] = kind.get![name](target, this.session);
+      } else if (memberNamed(kind.objects, first) !== undefined) byLead.set(first, []);
       else throw unknownMember(object, first);
     }
     for (const [lead, paths] of byLead) {

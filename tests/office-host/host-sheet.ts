@@ -216,6 +216,11 @@ export class HostSheet implements SheetSnapshot {
     this.cellToChange(row, column).value = value;
   }
 
+  /** What array formulas fill. */
+  get arrays(): readonly CellRange[] {
+    return [...this.arrayRanges.values()];
+  }
+
   /** The array formula's range that fills this cell, or undefined. */
   arrayOver(row: number, column: number): CellRange | undefined {
     for (const range of this.arrayRanges.values()) {

@@ -13,6 +13,8 @@ export interface HostSession {
   readonly references: Map<string, HostObject>;
   /** Registered events, as `type:target`; the target is a sheet's id, or wholeWorkbookTarget. */
   readonly registeredEvents: Set<string>;
+  /** Members that were used, as `Range.Values`. */
+  readonly usedMembers: Set<string>;
   /** Which cells of an array formula say its text when asked for `formulas`: every one, or the first alone. */
   readonly arrayFormulasShow: 'everywhere' | 'first';
   /** @throws HostError where the workbook or the sheet takes no writes */

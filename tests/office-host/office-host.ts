@@ -60,6 +60,8 @@ export class OfficeHost implements HostSession {
   readonly arrayFormulasShow: 'everywhere' | 'first';
   readonly requirementSet: string;
   traffic: Traffic = newTraffic();
+  /** Members of the object model that the add-in has used, as `Range.Values`. */
+  readonly usedMembers = new Set<string>();
 
   /** A cell is being typed in: nothing else is done. */
   isEditingCell = false;

@@ -293,8 +293,11 @@ export const rangeKind: ObjectKind<RangeTarget> = {
   },
 };
 
-function arrayMarks(range: RangeTarget): boolean[] {
-  return [...cellsIn(range)].map(([row, column]) => range.sheet.arrayOver(row, column) !== undefined);
+/** Whether cells are filled by an array formula: one mark a cell, or one for all where there is no such formula. */
+function arrayMarks(range: RangeTarget): Iterable<boolean> {
+  const { sheet } = range;
+  if (!sheet.arrays.some((array) => overlaps(array, range))) return [false];
+  return [...cellsIn(range)].map(([row, column]) => sheet.arrayOver(row, column) !== undefined);
 }
 
 function overlaps(a: Omit<CellRange, 'sheet'>, b: Omit<CellRange, 'sheet'>): boolean {

@@ -7,7 +7,7 @@ import { cellCountOf, columnCountOf, rowCountOf, type CellRange } from '../../do
 export const messageTarget = 4_000_000;
 
 /** Bytes of one cell, with value, formula, kind and format, as long as none has been read yet. */
-const firstGuess = 60;
+export const firstGuess = 60;
 /** Cells looked at to learn how many bytes they take. */
 const sampleSize = 2_000;
 
@@ -33,10 +33,14 @@ export class RangeQueue {
     return this.waiting.length === 0;
   }
 
-  /** The parts for the next message, taken off the queue. */
-  take(): CellRange[] {
+  /**
+   * The parts for the next message, taken off the queue.
+   * @param bytes what the message has room for; a cell is always taken, unless there is no room at all
+   */
+  take(bytes = messageTarget): CellRange[] {
+    if (bytes <= 0) return [];
     const taken: CellRange[] = [];
-    let room = Math.max(1, Math.floor(messageTarget / this.bytesPerCell));
+    let room = Math.max(1, Math.floor(bytes / this.bytesPerCell));
     while (room > 0 && this.waiting.length > 0) {
       // Rather another message than a row in pieces.
       if (taken.length > 0 && columnCountOf(this.waiting[0]) > room) break;

@@ -5,17 +5,32 @@
  * of the write.
  */
 import { cellKey, formatCellAddress, type CellAddress } from '../../domain/sheet/cell-address';
-import { cellsOf, containsCell, rangesOverlap, type CellRange } from '../../domain/sheet/cell-range';
-import type { WorkbookSnapshot } from '../../domain/sheet/sheet-snapshot';
+import {
+  cellCountOf,
+  cellsOf,
+  containsCell,
+  rangesOverlap,
+  type CellRange,
+} from '../../domain/sheet/cell-range';
+import { findSheet, type WorkbookSnapshot } from '../../domain/sheet/sheet-snapshot';
 import { recordNamespace } from '../../domain/results-to-sheet/record-text';
 import { nothingWritten, type CellEdit, type PlannedEdits } from '../../ports/planned-edits';
 import { WorkbookError } from '../../ports/workbook';
 import type { OpenBatch } from './excel-batch';
-import { Fingerprint } from './excel-fingerprint';
+import { firstGuess, messageTarget, RangeQueue } from './excel-chunking';
+import { isAnswerTooLarge } from './excel-errors';
+import { changedMeanwhile, Fingerprint } from './excel-fingerprint';
 import { contentsOf } from './excel-contents';
 import { textFormat } from './excel-entry';
-import type { CellChange, CellContent, Journal, NameChange, WidthChange } from './excel-journal';
-import { rangesOfAddress } from './excel-ranges';
+import {
+  holds,
+  type CellChange,
+  type CellContent,
+  type Journal,
+  type NameChange,
+  type WidthChange,
+} from './excel-journal';
+import { listRanges, rangesOfAddress } from './excel-ranges';
 import { rectanglesOf } from './excel-rectangles';
 import { xmlOfRecord } from './excel-record';
 import type { ExcelAbilities } from './excel-requirements';
@@ -30,6 +45,10 @@ export interface Examined {
   readonly recordPartId: string | undefined;
 }
 
+/** How much more room cells are given after an answer that was too large, and how often. */
+const moreRoom = 8;
+const largestGuess = 100_000;
+
 /** @throws WorkbookError where the plan cannot be carried out; nothing has been touched then */
 export async function examine(
   batch: OpenBatch,
@@ -37,18 +56,24 @@ export async function examine(
   abilities: ExcelAbilities,
   basis: WorkbookSnapshot | undefined,
 ): Promise<Examined> {
-  const examination = new Examination(batch.context, edits, abilities, basis);
-  const fingerprint = basis === undefined ? undefined : new Fingerprint(batch.context, basis);
-  fingerprint?.request();
-  await batch.sync();
-  examination.refuseImpossible();
-  fingerprint?.compare();
-  while (fingerprint?.isDone === false) {
-    fingerprint.request();
-    await batch.sync();
-    fingerprint.compare();
+  for (let bytesPerCell = firstGuess; ; bytesPerCell *= moreRoom) {
+    try {
+      const examination = new Examination(batch.context, edits, abilities, basis, bytesPerCell);
+      const fingerprint = basis === undefined ? undefined : new Fingerprint(batch.context, basis);
+      let isDone: boolean;
+      do {
+        const room = messageTarget - examination.requestTargets();
+        fingerprint?.request(room);
+        await batch.sync();
+        examination.refuseImpossible();
+        fingerprint?.compare();
+        isDone = examination.isDone && fingerprint?.isDone !== false;
+      } while (!isDone);
+      return { journal: examination.journal(), recordPartId: examination.recordPartId };
+    } catch (error) {
+      if (!isAnswerTooLarge(error) || bytesPerCell > largestGuess) throw error;
+    }
   }
-  return { journal: examination.journal(), recordPartId: examination.recordPartId };
 }
 
 interface TargetSheet {
@@ -57,9 +82,12 @@ interface TargetSheet {
   readonly tables: Excel.TableCollection;
 }
 
-interface Target {
+interface LoadedTarget {
   readonly range: CellRange;
   readonly loaded: Excel.Range;
+}
+
+interface Target extends LoadedTarget {
   readonly merged: Excel.RangeAreas | undefined;
 }
 
@@ -75,11 +103,14 @@ class Examination {
   private readonly protection: Excel.WorkbookProtection;
   private readonly sheets: readonly TargetSheet[];
   private readonly addedSheets: readonly Excel.Worksheet[];
-  /** Cells that get a value or a formula, on sheets that are there. */
-  private readonly targets: readonly Target[];
+  /** Cells that get a value or a formula, on sheets that are there: those asked for so far. */
+  private readonly targets: Target[] = [];
+  /** Of these, the ones that the last round trip was about. */
+  private newTargets: readonly Target[] = [];
+  private readonly waiting: RangeQueue;
   /** Cells that must hold a formula, because their stored value is to be renewed. */
-  private readonly formulaCells: readonly Target[];
-  private readonly formatSources: readonly Target[];
+  private readonly formulaCells: readonly LoadedTarget[];
+  private readonly formatSources: readonly LoadedTarget[];
   private readonly wrapped: readonly { readonly range: CellRange; readonly format: Excel.RangeFormat }[];
   private readonly widths: readonly {
     readonly sheet: string;
@@ -97,6 +128,7 @@ class Examination {
     private readonly edits: PlannedEdits,
     private readonly abilities: ExcelAbilities,
     private readonly basis: WorkbookSnapshot | undefined,
+    private readonly bytesPerCell: number,
   ) {
     const { workbook } = context;
     this.application = workbook.application.load('calculationMode');
@@ -119,17 +151,12 @@ class Examination {
     const cells = present.flatMap(([sheet, { cells: ofSheet }]) =>
       [...ofSheet.values()].map((edit) => ({ ...edit, cell: { ...edit.cell, sheet } })),
     );
-    const arrayProperties = abilities.findsArrays ? ',hasSpill,savedAsArray' : '';
     const isStored = ({ content }: CellEdit): boolean => content.kind === 'storedValue';
     const written = cells.filter((edit) => !isStored(edit));
-    this.targets = this.requestRanges(
-      written.map(({ cell }) => cell),
-      `values,formulas,valueTypes,numberFormat,rowHidden${arrayProperties}`,
-      true,
-    );
+    this.waiting = new RangeQueue(rectanglesOf(written.map(({ cell }) => cell)), bytesPerCell);
     this.formulaCells = this.requestRanges(
       cells.filter(isStored).map(({ cell }) => cell),
-      `formulas${arrayProperties}`,
+      `formulas${this.arrayProperties}`,
     );
     const sources = new Map<string, CellAddress>();
     for (const { cells: ofSheet } of edits.sheets.values()) {
@@ -177,6 +204,29 @@ class Examination {
     }
   }
 
+  get isDone(): boolean {
+    return this.waiting.isEmpty;
+  }
+
+  /** Asks for the cells that are to be written, as many as one message has room for. @returns their bytes, about */
+  requestTargets(): number {
+    const properties = `values,formulas,valueTypes,numberFormat,rowHidden${this.arrayProperties}`;
+    const parts = this.waiting.take();
+    this.newTargets = parts.map((range) => {
+      const loaded = this.rangeOf(range).load(properties);
+      const merged = this.abilities.findsMergedCells
+        ? loaded.getMergedAreasOrNullObject().load('address')
+        : undefined;
+      return { range, loaded, merged };
+    });
+    this.targets.push(...this.newTargets);
+    return parts.reduce((sum, range) => sum + cellCountOf(range) * this.bytesPerCell, 0);
+  }
+
+  private get arrayProperties(): string {
+    return this.abilities.findsArrays ? ',hasSpill,savedAsArray' : '';
+  }
+
   /** @throws WorkbookError for what Excel would not do, or what must not be done */
   refuseImpossible(): void {
     for (const { name, worksheet } of this.sheets) {
@@ -204,14 +254,15 @@ class Examination {
       );
     }
     this.refuseFiltered();
-    this.targets.forEach((target) => this.refuseOverwriting(target));
+    this.refuseChanged();
+    this.newTargets.forEach((target) => this.refuseOverwriting(target));
     for (const { range, loaded } of this.formulaCells) {
       loaded.formulas.forEach((row, down) =>
         row.forEach((formula: unknown, across) => {
           const cell = { sheet: range.sheet, row: range.top + down, column: range.left + across };
           if (
             !(typeof formula === 'string' && formula.startsWith('=')) &&
-            !this.isFilled(cell, { range, loaded, merged: undefined })
+            !this.isFilled(cell, { range, loaded })
           ) {
             const why = `${formatCellAddress(cell)} holds no formula whose value could be renewed`;
             throw refusal('write-failed', why);
@@ -346,6 +397,23 @@ class Examination {
     }
   }
 
+  /** Somebody has put something else there since the workbook was read. */
+  private refuseChanged(): void {
+    if (this.basis === undefined) return;
+    const changed = this.newTargets.flatMap(({ range, loaded }) => {
+      const sheet = findSheet(this.basis!, range.sheet);
+      if (sheet === undefined) return [];
+      return contentsOf(range, loaded).filter(({ cell, content }) => {
+        const { value = null, formula } = sheet.cell(cell.row, cell.column) ?? {};
+        return !this.isFilled(cell, { range, loaded }) && !holds(content, { value, formula });
+      });
+    });
+    if (changed.length > 0) {
+      const ranges = rectanglesOf(changed.map(({ cell }) => cell));
+      throw changedMeanwhile(listRanges(ranges), ranges);
+    }
+  }
+
   private refuseOverwriting(target: Target): void {
     const { range, loaded, merged } = target;
     const covered =
@@ -369,7 +437,7 @@ class Examination {
   }
 
   /** Cell by cell as the workbook was read; where no array was known, Excel says it of the whole range. */
-  private isFilled(cell: CellAddress, { range, loaded }: Target): boolean {
+  private isFilled(cell: CellAddress, { range, loaded }: LoadedTarget): boolean {
     const known = this.arraysOf(cell.sheet);
     if (known.some((array) => rangesOverlap(array, range))) {
       return known.some((array) => containsCell(array, cell));
@@ -393,15 +461,8 @@ class Examination {
     return arrays;
   }
 
-  private requestRanges(cells: readonly CellAddress[], properties: string, withMerged = false): Target[] {
-    return rectanglesOf(cells).map((range) => {
-      const loaded = this.rangeOf(range).load(properties);
-      const merged =
-        withMerged && this.abilities.findsMergedCells
-          ? loaded.getMergedAreasOrNullObject().load('address')
-          : undefined;
-      return { range, loaded, merged };
-    });
+  private requestRanges(cells: readonly CellAddress[], properties: string): LoadedTarget[] {
+    return rectanglesOf(cells).map((range) => ({ range, loaded: this.rangeOf(range).load(properties) }));
   }
 
   /** On a sheet that may not be there. */

@@ -43,11 +43,11 @@ export class Fingerprint {
     return this.isStarted && this.queue.isEmpty;
   }
 
-  /** Asks for the next part: as a rule, for everything. */
-  request(): void {
+  /** Asks for the next part, as a rule for everything. @param bytes what the message still has room for */
+  request(bytes: number): void {
     if (!this.isStarted) this.requestStructure();
     this.isStarted = true;
-    for (const part of this.queue.take()) {
+    for (const part of this.queue.take(bytes)) {
       const sheet = findSheet(this.basis, part.sheet)!;
       const worksheet = this.context.workbook.worksheets.getItemOrNullObject(part.sheet).load('name');
       const range = worksheet
@@ -111,36 +111,25 @@ export class Fingerprint {
     });
   }
 
-  /** A reference to whole columns or rows ends where the sheet does: entries beyond that end belong to it too. */
-  private compareExtent(sheet: SheetSnapshot, used: CellRange): void {
-    const { name, rowCount, columnCount } = sheet;
-    if (rowCount === 0) return;
-    if (used.bottom >= rowCount) {
-      const last = { sheet: name, top: rowCount - 1, bottom: rowCount - 1 };
-      for (let column = 0; column < columnCount; column++) {
-        if (
-          this.reachesTheEnd((range) => range.bottom, rowCount - 1, { ...last, left: column, right: column })
-        ) {
-          this.differing.push({ ...last, left: column, right: column });
-          break;
-        }
-      }
-    }
-    if (used.right >= columnCount) {
-      const last = { sheet: name, left: columnCount - 1, right: columnCount - 1 };
-      for (let row = 0; row < rowCount; row++) {
-        if (this.reachesTheEnd((range) => range.right, columnCount - 1, { ...last, top: row, bottom: row })) {
-          this.differing.push({ ...last, top: row, bottom: row });
-          break;
-        }
-      }
-    }
+  /**
+   * A reference to whole columns or rows ends where the sheet does, so that entries beyond that end belong to it too:
+   * it is told by reaching from the first row or column to the last.
+   */
+  private compareExtent({ name, rowCount, columnCount }: SheetSnapshot, used: CellRange): void {
+    const [lastRow, lastColumn] = [rowCount - 1, columnCount - 1];
+    const whole = this.isStretched(used, lastRow, lastColumn)
+      ? this.relevantRanges().find(
+          (range) =>
+            range.sheet === name &&
+            ((used.bottom > lastRow && range.top === 0 && range.bottom === lastRow) ||
+              (used.right > lastColumn && range.left === 0 && range.right === lastColumn)),
+        )
+      : undefined;
+    if (whole !== undefined) this.differing.push(whole);
   }
 
-  private reachesTheEnd(end: (range: CellRange) => number, at: number, cell: CellRange): boolean {
-    return this.relevantRanges().some(
-      (range) => range.sheet === cell.sheet && end(range) === at && rangesOverlap(range, cell),
-    );
+  private isStretched(used: CellRange, lastRow: number, lastColumn: number): boolean {
+    return lastRow >= 0 && (used.bottom > lastRow || used.right > lastColumn);
   }
 
   private compareCells(
@@ -229,7 +218,8 @@ function compareNames(basis: readonly DefinedName[], present: readonly DefinedNa
   if (added !== undefined) throw changedMeanwhile(`the name ${added.name}`, []);
 }
 
-function changedMeanwhile(what: string, ranges: readonly CellRange[]): WorkbookError {
+/** @param what in words, after which the ranges are told to whoever shows them */
+export function changedMeanwhile(what: string, ranges: readonly CellRange[]): WorkbookError {
   return new WorkbookError(
     'changed-meanwhile',
     `The workbook was changed after it was read (${what}), so these results may no longer be right. Nothing was written; solve again.`,

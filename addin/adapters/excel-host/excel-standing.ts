@@ -13,13 +13,14 @@ import {
   changesByCell,
   standingOf,
   type CellChange,
+  type CellContent,
   type Direction,
   type Journal,
   type NameChange,
 } from './excel-journal';
 import { rectanglesOf } from './excel-rectangles';
 import { recordOfXml } from './excel-record';
-import type { OpenWork } from './excel-writing';
+import { answerBytes, type OpenWork } from './excel-writing';
 
 /** What is to be done to bring everything to one end. */
 export async function workLeft(batch: OpenBatch, journal: Journal, direction: Direction): Promise<OpenWork> {
@@ -95,7 +96,7 @@ type Standing = ReturnType<typeof standingOf>;
 async function standingsOf(batch: OpenBatch, changes: readonly CellChange[]): Promise<Map<string, Standing>> {
   const standings = new Map<string, Standing>();
   const byCell = changesByCell(changes);
-  const queue = new RangeQueue(rectanglesOf(changes.map(({ cell }) => cell)));
+  const queue = new RangeQueue(rectanglesOf(changes.map(({ cell }) => cell)), bytesPerCell(changes));
   do {
     const asked = queue.take().map((range) => {
       const worksheet = batch.context.workbook.worksheets.getItemOrNullObject(range.sheet).load('name');
@@ -121,6 +122,16 @@ async function standingsOf(batch: OpenBatch, changes: readonly CellChange[]): Pr
     }
   } while (!queue.isEmpty);
   return standings;
+}
+
+/** Either end of a change may be what stands there. */
+function bytesPerCell(changes: readonly CellChange[]): number {
+  const length = ({ value, formula }: CellContent): number => (formula ?? String(value)).length;
+  const bytes = changes.reduce(
+    (sum, { before, after }) => sum + answerBytes(Math.max(length(before), length(after))),
+    0,
+  );
+  return bytes / Math.max(1, changes.length);
 }
 
 function changesIn(changes: readonly CellChange[], range: CellRange): CellChange[] {

@@ -22,6 +22,11 @@ import { rectanglesOf } from './excel-rectangles';
 
 /** Bytes of an entry beside its own text: quotes, commas, brackets, and its format. */
 const entryOverhead = 14;
+/** Bytes of what comes back about a cell with an entry of some length: value, formula and kind. */
+export function answerBytes(entryLength: number): number {
+  return 2 * entryLength + 2 * entryOverhead;
+}
+
 /** Bytes of what goes with each rectangle. */
 const rectangleOverhead = 600;
 
@@ -146,12 +151,14 @@ function entryOfChange(change: CellChange, direction: Direction): Entry {
   return content.formula === undefined ? entryOf(content.value, format) : `=${content.formula}`;
 }
 
+/** What a cell takes of the message there, or of the answer, which tells its value, its formula and its kind. */
 function bytesPerCell(changes: readonly CellChange[], direction: Direction): number {
   const rectangles = rectanglesOf(changes.map(({ cell }) => cell)).length;
   const bytes = changes.reduce((sum, change) => {
     const { formatBefore, formatAfter } = change;
+    const entry = String(entryOfChange(change, direction)).length;
     const format = formatBefore === formatAfter ? 0 : formatAfter.length + 3;
-    return sum + String(entryOfChange(change, direction)).length + format + entryOverhead;
+    return sum + Math.max(entry + format + entryOverhead, answerBytes(entry));
   }, rectangles * rectangleOverhead);
   return Math.max(1, Math.min(messageTarget, bytes / Math.max(1, changes.length)));
 }
