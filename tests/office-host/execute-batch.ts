@@ -40,7 +40,8 @@ export function executeBatch(
         Code: error.code,
         Message: error.message,
         Location: error.location,
-        ActionIndex: position,
+        // The library looks the failed statement up, so it must be one of the batch.
+        ActionIndex: Math.min(position, request.Actions.length - 1),
         HttpStatusCode: 400,
       },
     };

@@ -147,6 +147,11 @@ export class HostSheet implements SheetSnapshot {
     }
   }
 
+  /** Cells that hold something, or have a format of their own, in no promised order. */
+  touchedCells(): [row: number, column: number][] {
+    return [...this.cells.values()].map(({ row, column }) => [row, column]);
+  }
+
   isRowHidden(row: number): boolean {
     return this.hiddenRows.has(row) || this.filters.some(({ hiddenRows }) => hiddenRows.has(row));
   }

@@ -47,7 +47,10 @@ export async function workLeft(batch: OpenBatch, journal: Journal, direction: Di
   const standings = await standingsOf(batch, journal.cells);
 
   const wanted = direction === 'forward' ? 'back' : 'forward';
-  const cells = journal.cells.filter((change) => standings.get(formatCellAddress(change.cell)) === wanted);
+  const cells = journal.cells.filter((change) => {
+    const standing = standings.get(formatCellAddress(change.cell));
+    return standing === wanted || (standing === 'both' && changesLooks(change));
+  });
   const isThere = (name: string): boolean =>
     addedSheets.some((added) => added.name === name && !added.worksheet.isNullObject);
   const missing = journal.addedSheets.filter((name) => !isThere(name));
@@ -122,6 +125,11 @@ async function standingsOf(batch: OpenBatch, changes: readonly CellChange[]): Pr
     }
   } while (!queue.isEmpty);
   return standings;
+}
+
+/** Of a cell that holds the same at both ends, only its looks tell them apart; they are simply set again. */
+function changesLooks({ formatBefore, formatAfter, wrapsBefore, wrapsAfter }: CellChange): boolean {
+  return formatBefore !== formatAfter || wrapsBefore !== wrapsAfter;
 }
 
 /** Either end of a change may be what stands there. */

@@ -115,7 +115,10 @@ function writeName(workbook: Excel.Workbook, change: NameChange, direction: Dire
   }
 }
 
-/** Formats first: what a cell makes of an entry depends on its format. */
+/**
+ * Formats first: what a cell makes of an entry depends on its format, and a cell that holds its entry has everything
+ * that goes with it, wherever a write broke off.
+ */
 function writeRange(
   context: Excel.RequestContext,
   range: CellRange,
@@ -134,7 +137,6 @@ function writeRange(
   if (ofRange.some(({ formatBefore, formatAfter }) => formatBefore !== formatAfter)) {
     target.numberFormat = inRows(({ formatBefore, formatAfter }) => (isForward ? formatAfter : formatBefore));
   }
-  target.formulas = inRows((change) => entryOfChange(change, direction));
   for (const { cell, wrapsBefore, wrapsAfter } of ofRange) {
     if (wrapsBefore !== undefined && wrapsAfter !== undefined && wrapsBefore !== wrapsAfter) {
       const { sheet, row, column } = cell;
@@ -142,6 +144,7 @@ function writeRange(
       single.format.wrapText = isForward ? wrapsAfter : wrapsBefore;
     }
   }
+  target.formulas = inRows((change) => entryOfChange(change, direction));
   return target.load(contentProperties);
 }
 

@@ -7,7 +7,8 @@ import { ExcelFilters } from '../../../../addin/adapters/excel-host/excel-filter
 import { ExcelBatches } from '../../../../addin/adapters/excel-host/excel-batch';
 import { pointsOfCharacters } from '../../../../addin/adapters/excel-host/excel-widths';
 import type { OfficeHost } from '../../../office-host/office-host';
-import { at, cellFacts, openDescribed, refusalOf } from './open-in-excel';
+import { stateOf } from '../../../office-host/host-state';
+import { at, openDescribed, refusalOf } from './open-in-excel';
 
 const week: WorkbookDescription = {
   sheets: {
@@ -34,16 +35,6 @@ const value = (text: string, written: number | string | boolean | null, sheet = 
   cell: at(sheet, text),
   value: written,
 });
-
-/** Everything in the workbook that a write could change. */
-function stateOf(host: OfficeHost): unknown {
-  const { workbook } = host;
-  return {
-    cells: cellFacts(workbook.snapshot()),
-    names: workbook.names.map(({ name, formula }) => `${name} ${formula}`),
-    parts: workbook.xmlParts.map(({ xml }) => xml),
-  };
-}
 
 describe('texts come back as the same texts', () => {
   // What Excel would otherwise make of them: dates, numbers, formulas, truth values, errors, in some language.
@@ -160,10 +151,10 @@ describe('refused before anything is touched', () => {
   ): Promise<Awaited<ReturnType<typeof refusalOf>>> {
     const { host, workbook } = openDescribed(description);
     prepare(host);
-    const before = stateOf(host);
+    const before = stateOf(host.workbook);
     const basis = await workbook.read();
     const refusal = await refusalOf(workbook.apply(plan, basis));
-    expect(stateOf(host)).toEqual(before);
+    expect(stateOf(host.workbook)).toEqual(before);
     expect(workbook.unfinished()).toEqual([]);
     return refusal;
   }
@@ -245,10 +236,10 @@ describe('refused before anything is touched', () => {
 
   it('an open dialog, found when writing begins: the workbook is as it was', async () => {
     const { host, workbook } = openDescribed(week);
-    const before = stateOf(host);
+    const before = stateOf(host.workbook);
     host.isDialogOpen = true;
     expect(await refusalOf(workbook.apply(plan))).toMatchObject({ code: 'dialog-open', canRetry: true });
-    expect(stateOf(host)).toEqual(before);
+    expect(stateOf(host.workbook)).toEqual(before);
     host.isDialogOpen = false;
     await workbook.apply(plan);
     expect(host.value('Plan!B5')).toBe(1);
@@ -262,12 +253,12 @@ describe('a workbook that was changed after it was read', () => {
     const { host, workbook } = openDescribed(week);
     const basis = await workbook.read();
     change(host);
-    const before = stateOf(host);
+    const before = stateOf(host.workbook);
     const outcome = await workbook.apply(plan, basis).then(
       () => 'written',
       (error: { code: string; message: string }) => `${error.code}: ${error.message}`,
     );
-    if (outcome !== 'written') expect(stateOf(host)).toEqual(before);
+    if (outcome !== 'written') expect(stateOf(host.workbook)).toEqual(before);
     return outcome;
   }
 
@@ -327,11 +318,11 @@ it('what Excel does not keep is found out and put back: a merged cell that could
     { ...week, merged: { Plan: ['F5:F6'] } },
     { requirementSet: '1.9' },
   );
-  const before = stateOf(host);
+  const before = stateOf(host.workbook);
   const refusal = await refusalOf(workbook.apply([value('B5', 1), value('F5', 1), value('F6', 2)]));
   expect(refusal).toMatchObject({ code: 'not-verified', canRetry: true });
   expect(refusal.message).toContain('Plan!F6');
-  expect(stateOf(host)).toEqual(before);
+  expect(stateOf(host.workbook)).toEqual(before);
 });
 
 it('a plan beyond one message is written in several, whole', async () => {
