@@ -25,8 +25,8 @@ const densityMemory = 0.05;
 
 /** What is solved for: solutions of one kind have about the same density from one iteration to the next. */
 export type SolveKind = 'entering column' | 'tableau row' | 'edge weights' | 'other';
-/** Updates after which the factors are renewed whatever their state. */
-const mostUpdates = 100;
+/** Updates after which the factors are renewed whatever their state: fewer for small bases, whose factors cost little. */
+const mostUpdates = (rowCount: number): number => Math.min(100, 40 + Math.floor(rowCount / 20));
 
 export class BasisFactorization {
   private readonly factors: LuFactors;
@@ -91,7 +91,7 @@ export class BasisFactorization {
   /** Enough updates or fill to be worth new factors. */
   get shouldRefactorize(): boolean {
     const { etaCount, upperEntryCount, lowerSize } = this.factors;
-    if (etaCount >= mostUpdates) return true;
+    if (etaCount >= mostUpdates(this.matrix.rowCount)) return true;
     const entries = upperEntryCount + lowerSize + (this.factors.etaStart[etaCount] ?? 0);
     return entries > 3 * this.freshEntries + 2 * this.matrix.rowCount + 1000;
   }
