@@ -33,7 +33,10 @@ export function solveReportText(report: SolveReport, context: ReportContext): st
   if (report.status !== null) {
     lines.push(statusSentence(report.status, hasPlan), '');
   }
-  lines.push(...figureLines(report, context), '');
+  const figures = figureLines(report, context);
+  if (figures.length > 0) {
+    lines.push(...figures, '');
+  }
   if (hasPlan) {
     lines.push(...decisionLines(report.decisions, context.before), '');
     if (report.constraints.length > 0) {
