@@ -2,6 +2,7 @@
  * A workbook's snapshot in buffers, to be handed to another thread: numbers in typed arrays, texts joined into one, so
  * that handing it over copies a few large pieces and not one object a cell.
  */
+import { searchedLaneCount } from '../domain/results-to-sheet/free-columns';
 import { cellKey, type CellAddress } from '../domain/sheet/cell-address';
 import type { CellRange } from '../domain/sheet/cell-range';
 import { CellError, type CellValue } from '../domain/sheet/cell-value';
@@ -60,7 +61,7 @@ export interface PackedWorkbook {
 }
 
 /**
- * @param pause called between sheets, so that nobody waits for a large workbook as a whole
+ * @param pause called before each sheet, so that nobody waits for a large workbook as a whole
  */
 export async function packWorkbook(
   workbook: WorkbookSnapshot,
@@ -68,9 +69,7 @@ export async function packWorkbook(
 ): Promise<PackedWorkbook> {
   const sheets: PackedSheet[] = [];
   for (const sheet of workbook.sheets) {
-    if (sheets.length > 0) {
-      await pause();
-    }
+    await pause();
     sheets.push(packSheet(sheet));
   }
   const { names, tables, usesDates1904, record } = workbook;
@@ -132,8 +131,9 @@ function packSheet(sheet: SheetSnapshot): PackedSheet {
   return {
     ...{ name, visibility, isProtected, rowCount, columnCount, hasActiveFilter },
     ...{ mergedRanges, notedCells, pivotRanges },
-    hiddenRows: linesThat(rowCount, (row) => sheet.isRowHidden(row)),
-    hiddenColumns: linesThat(columnCount, (column) => sheet.isColumnHidden(column)),
+    // Results may be placed beyond what is used, and not where it is hidden.
+    hiddenRows: linesThat(rowCount + 1 + searchedLaneCount, (row) => sheet.isRowHidden(row)),
+    hiddenColumns: linesThat(columnCount + 1 + searchedLaneCount, (column) => sheet.isColumnHidden(column)),
     ...{ rows, columns, kinds, numbers, formatsAndDates, arrays },
     texts: packTexts(texts),
     formulaCells: Uint32Array.from(formulaCells),

@@ -136,7 +136,8 @@ export async function readExcelWorkbook(
 
 function requestSheet(worksheet: Excel.Worksheet, abilities: ExcelAbilities): SheetRequest {
   const used = worksheet.getUsedRangeOrNullObject(true);
-  used.load(`${placeOfRange}${abilities.findsArrays ? ',hasSpill,savedAsArray' : ''}`);
+  if (abilities.findsArrays) used.load('rowIndex,columnIndex,rowCount,columnCount,hasSpill,savedAsArray');
+  else used.load('rowIndex,columnIndex,rowCount,columnCount');
   return {
     name: worksheet.name,
     visibility: visibilityOf(worksheet.visibility),

@@ -16,10 +16,12 @@ export class ExcelSelection implements Selection {
     try {
       return await this.batches.run(async ({ context, sync }) => {
         const selected = context.workbook.getSelectedRanges();
-        selected.worksheet.load('name');
-        selected.areas.load('items/rowIndex,items/columnIndex,items/rowCount,items/columnCount');
+        const asked = {
+          worksheet: selected.worksheet.load('name'),
+          areas: selected.areas.load('items/rowIndex,items/columnIndex,items/rowCount,items/columnCount'),
+        };
         await sync();
-        return selected.areas.items.map((area) => cellRangeOf(selected.worksheet.name, area));
+        return asked.areas.items.map((area) => cellRangeOf(asked.worksheet.name, area));
       });
     } catch (error) {
       // A picture or a chart is selected, and no cells.

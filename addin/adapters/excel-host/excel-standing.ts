@@ -33,8 +33,8 @@ export async function workLeft(batch: OpenBatch, journal: Journal, direction: Di
   }));
   const names = journal.names.map((change) => ({ change, item: requestName(workbook, change) }));
   const records = workbook.customXmlParts.getByNamespace(recordNamespace);
-  const recordPart = records.getOnlyItemOrNullObject().load('id');
-  const recordXml = recordPart.getXml();
+  const part = records.getOnlyItemOrNullObject().load('id');
+  const record = { part, xml: part.getXml() };
   const widths = journal.widths.map((change) => {
     const { sheet, column } = change;
     const worksheet = workbook.worksheets.getItemOrNullObject(sheet).load('name');
@@ -44,7 +44,13 @@ export async function workLeft(batch: OpenBatch, journal: Journal, direction: Di
       format: worksheet.getRangeByIndexes(0, column, 1, 1).format.load('columnWidth'),
     };
   });
-  const standings = await standingsOf(batch, journal.cells);
+  const present = new PresentCells(context, journal.cells);
+  do {
+    present.request();
+    await batch.sync();
+    present.take();
+  } while (!present.isDone);
+  const { standings } = present;
 
   const wanted = direction === 'forward' ? 'back' : 'forward';
   const cells = journal.cells.filter((change) => {
@@ -82,8 +88,8 @@ export async function workLeft(batch: OpenBatch, journal: Journal, direction: Di
         return isSameName(present, direction === 'forward' ? change.before : change.after);
       })
       .map(({ change }) => change),
-    record: recordToWrite(journal, recordPart.isNullObject ? null : recordXml.value, direction),
-    recordPartId: recordPart.isNullObject ? undefined : recordPart.id,
+    record: recordToWrite(journal, record.part.isNullObject ? null : record.xml.value, direction),
+    recordPartId: record.part.isNullObject ? undefined : record.part.id,
     addedSheets: direction === 'forward' ? missing : [],
     removedSheets,
   };
@@ -96,35 +102,56 @@ export function allWork(journal: Journal, recordPartId: string | undefined): Ope
 
 type Standing = ReturnType<typeof standingOf>;
 
-async function standingsOf(batch: OpenBatch, changes: readonly CellChange[]): Promise<Map<string, Standing>> {
-  const standings = new Map<string, Standing>();
-  const byCell = changesByCell(changes);
-  const queue = new RangeQueue(rectanglesOf(changes.map(({ cell }) => cell)), bytesPerCell(changes));
-  do {
-    const asked = queue.take().map((range) => {
-      const worksheet = batch.context.workbook.worksheets.getItemOrNullObject(range.sheet).load('name');
+/** Reads the cells of a journal again, in as many round trips as they need. */
+class PresentCells {
+  /** By formatCellAddress. */
+  readonly standings = new Map<string, Standing>();
+  private readonly byCell: ReadonlyMap<string, CellChange>;
+  private readonly queue: RangeQueue;
+  private asked: readonly {
+    readonly range: CellRange;
+    readonly worksheet: Excel.Worksheet;
+    readonly loaded: Excel.Range;
+  }[] = [];
+
+  constructor(
+    private readonly context: Excel.RequestContext,
+    private readonly changes: readonly CellChange[],
+  ) {
+    this.byCell = changesByCell(changes);
+    this.queue = new RangeQueue(rectanglesOf(changes.map(({ cell }) => cell)), bytesPerCell(changes));
+  }
+
+  get isDone(): boolean {
+    return this.queue.isEmpty;
+  }
+
+  request(): void {
+    this.asked = this.queue.take().map((range) => {
+      const worksheet = this.context.workbook.worksheets.getItemOrNullObject(range.sheet).load('name');
       const { top, left, bottom, right } = range;
       const loaded = worksheet
         .getRangeByIndexes(top, left, bottom - top + 1, right - left + 1)
         .load(contentProperties);
       return { range, worksheet, loaded };
     });
-    await batch.sync();
-    for (const { range, worksheet, loaded } of asked) {
+  }
+
+  take(): void {
+    for (const { range, worksheet, loaded } of this.asked) {
       if (worksheet.isNullObject) {
         // Of a sheet that is not there yet, nothing is done; of one that is gone, nothing can be.
-        for (const change of changesIn(changes, range)) {
-          standings.set(formatCellAddress(change.cell), 'back');
+        for (const { cell } of changesIn(this.changes, range)) {
+          this.standings.set(formatCellAddress(cell), 'back');
         }
         continue;
       }
       for (const { cell, content } of contentsOf(range, loaded)) {
         const at = formatCellAddress(cell);
-        standings.set(at, standingOf(byCell.get(at)!, content));
+        this.standings.set(at, standingOf(this.byCell.get(at)!, content));
       }
     }
-  } while (!queue.isEmpty);
-  return standings;
+  }
 }
 
 /** Of a cell that holds the same at both ends, only its looks tell them apart; they are simply set again. */

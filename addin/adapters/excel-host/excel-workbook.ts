@@ -31,24 +31,27 @@ interface OpenJournal {
 
 export class ExcelWorkbook implements Workbook, WriteJournal {
   private open: OpenJournal | undefined;
-  private writesUnderWay = 0;
+  private isWritingNow = false;
+  /** Ends when everything begun so far has. */
+  private lastWork: Promise<unknown> = Promise.resolve();
 
   constructor(private readonly batches: ExcelBatches) {}
 
   /** Some of what Excel reports as changed may be by us. */
   get isWriting(): boolean {
-    return this.writesUnderWay > 0;
+    return this.isWritingNow;
   }
 
   read(): Promise<WorkbookSnapshot> {
-    return this.batches.run((batch) => readExcelWorkbook(batch, excelAbilities()));
+    return this.inTurn(() => this.batches.run((batch) => readExcelWorkbook(batch, excelAbilities())));
   }
 
-  async apply(plan: WritePlan, basis?: WorkbookSnapshot): Promise<void> {
-    if (this.open !== undefined) throw halfWritten(this.open.ranges, undefined);
-    const edits = planEdits(plan, sheetNamesFor(plan, basis), 'the workbook');
-    await this.whileWriting(async () => {
+  apply(plan: WritePlan, basis?: WorkbookSnapshot): Promise<void> {
+    return this.inTurn(async () => {
+      if (this.open !== undefined) throw halfWritten(this.open.ranges, undefined);
+      const edits = planEdits(plan, sheetNamesFor(plan, basis), 'the workbook');
       let begun: Journal | undefined;
+      this.isWritingNow = true;
       try {
         const failed = await this.batches.run(async (batch) => {
           const { journal, recordPartId } = await examine(batch, edits, excelAbilities(), basis);
@@ -59,6 +62,8 @@ export class ExcelWorkbook implements Workbook, WriteJournal {
       } catch (error) {
         if (begun === undefined) throw error;
         await this.takeBack(begun, error);
+      } finally {
+        this.isWritingNow = false;
       }
     });
   }
@@ -87,20 +92,25 @@ export class ExcelWorkbook implements Workbook, WriteJournal {
     throw withNothingChanged(cause);
   }
 
-  private async bringTo(direction: Direction): Promise<void> {
-    const open = this.open;
-    if (open === undefined) return;
-    await this.whileWriting(() => this.batches.run((batch) => bring(batch, open.journal, direction)));
-    this.open = undefined;
+  private bringTo(direction: Direction): Promise<void> {
+    return this.inTurn(async () => {
+      const open = this.open;
+      if (open === undefined) return;
+      this.isWritingNow = true;
+      try {
+        await this.batches.run((batch) => bring(batch, open.journal, direction));
+        this.open = undefined;
+      } finally {
+        this.isWritingNow = false;
+      }
+    });
   }
 
-  private async whileWriting(work: () => Promise<void>): Promise<void> {
-    this.writesUnderWay++;
-    try {
-      await work();
-    } finally {
-      this.writesUnderWay--;
-    }
+  /** One thing after another: nobody reads what is half written. */
+  private inTurn<T>(work: () => Promise<T>): Promise<T> {
+    const result = this.lastWork.then(work);
+    this.lastWork = result.catch(() => undefined);
+    return result;
   }
 }
 
