@@ -61,13 +61,15 @@ function loadLibrary(): Bridge {
     sendMessageToHost(text) {
       const host = current!;
       const request = JSON.parse(text) as BridgeRequest;
-      queueMicrotask(() => {
+      const answer = (): void => {
         const body = host.exchange(JSON.stringify(request.message.body), request.flags);
         if (body === undefined) return;
         const message = { statusCode: 200, headers: {}, body };
         made.onMessageFromHost?.(JSON.stringify({ id: request.id, type: messageTypes.response, message }));
         host.flushEvents();
-      });
+      };
+      if (host.beforeAnswer === undefined) queueMicrotask(answer);
+      else void host.beforeAnswer().then(answer);
     },
   };
   standInForWindow(made);
@@ -82,7 +84,14 @@ function loadLibrary(): Bridge {
   const library = globalThis as unknown as LibraryGlobals;
   library.OfficeExtension.CommonUtility._doApiNotSupportedCheck = true;
   const isSetSupported = (set: string, version?: string): boolean => current!.supports(set, version);
-  const context = { requirements: { isSetSupported }, platform: 'OfficeOnline', host: 'Excel' };
+  const context = {
+    requirements: { isSetSupported },
+    platform: 'OfficeOnline',
+    host: 'Excel',
+    get officeTheme(): unknown {
+      return current!.officeTheme;
+    },
+  };
   library.OSF._OfficeAppFactory = { getContext: () => context };
   return made;
 }

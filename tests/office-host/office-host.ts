@@ -68,6 +68,10 @@ export class OfficeHost implements HostSession {
   /** Another workbook has come to the front. */
   isInBackground = false;
   isDialogOpen = false;
+  /** As `Office.context.officeTheme` gives it, where the host tells its theme at all. */
+  officeTheme: unknown = undefined;
+  /** What an answer waits for: a slow host. Without it, answers come at once. */
+  beforeAnswer: (() => Promise<void>) | undefined;
   /** Called before each batch that the add-in waits for, with its number since the last reset. */
   beforeBatch: ((number: number) => void) | undefined;
   /** How events reach the library; set by the transport. */

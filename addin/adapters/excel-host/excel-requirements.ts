@@ -19,6 +19,8 @@ export interface ExcelAbilities {
   readonly findsMergedCells: boolean;
   /** Notes can be found; 1.18. Without: as for comments. */
   readonly findsNotes: boolean;
+  /** Several rectangles can be selected at once; 1.18. Without: the first of them. */
+  readonly selectsAreas: boolean;
 }
 
 export function excelAbilities(): ExcelAbilities {
@@ -27,6 +29,7 @@ export function excelAbilities(): ExcelAbilities {
     findsArrays: isSupported('1.12'),
     findsMergedCells: isSupported('1.13'),
     findsNotes: isSupported('1.18'),
+    selectsAreas: isSupported('1.18'),
   };
 }
 

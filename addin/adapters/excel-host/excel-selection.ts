@@ -8,6 +8,7 @@ import type { Selection, Stop } from '../../ports/selection';
 import { WorkbookError } from '../../ports/workbook';
 import type { ExcelBatches } from './excel-batch';
 import { cellRangeOf } from './excel-ranges';
+import { excelAbilities } from './excel-requirements';
 
 export class ExcelSelection implements Selection {
   constructor(private readonly batches: ExcelBatches) {}
@@ -54,11 +55,11 @@ export class ExcelSelection implements Selection {
         });
       }
       worksheet.activate();
-      if (ranges.length === 1) {
-        const [range] = ranges;
-        worksheet.getRangeByIndexes(range.top, range.left, rowCountOf(range), columnCountOf(range)).select();
-      } else {
+      if (ranges.length > 1 && excelAbilities().selectsAreas) {
         worksheet.getRanges(addressOfRanges(ranges)).select();
+      } else {
+        const [{ top, left }] = ranges;
+        worksheet.getRangeByIndexes(top, left, rowCountOf(ranges[0]), columnCountOf(ranges[0])).select();
       }
       await sync();
     });

@@ -69,12 +69,16 @@ export async function openPaneInExcel(
   page.on('console', (message) => {
     if (message.type() === 'error') faults.push(message.text());
   });
-  await page.exposeFunction('planrowExchange', (text: string, flags: number): string | null => {
-    const answer = host.exchange(text, flags) ?? null;
-    // After the answer has gone out, as in the product.
-    setImmediate(() => host.flushEvents());
-    return answer;
-  });
+  await page.exposeFunction(
+    'planrowExchange',
+    async (text: string, flags: number): Promise<string | null> => {
+      await host.beforeAnswer?.();
+      const answer = host.exchange(text, flags) ?? null;
+      // After the answer has gone out, as in the product.
+      setImmediate(() => host.flushEvents());
+      return answer;
+    },
+  );
   const fileOf = typeof files === 'string' ? (asked: string) => fileIn(files, asked) : files;
   await page.context().route('**/*', async (route) => {
     const address = route.request().url();
