@@ -269,7 +269,8 @@ export const rangeKind: ObjectKind<RangeTarget> = {
       return array !== undefined && isFirst ? rangeObject(range.sheet, array) : null;
     },
     Select: (range, { workbook }) => {
-      workbook.selection = { sheet: range.sheet, ranges: [{ ...range, sheet: range.sheet.name }] };
+      const { sheet, top, left, bottom, right } = range;
+      workbook.selection = { sheet, ranges: [{ sheet: sheet.name, top, left, bottom, right }] };
       return null;
     },
     Clear: (range, session, applyTo) => {
