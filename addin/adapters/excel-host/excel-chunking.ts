@@ -80,10 +80,11 @@ export class RangeQueue {
 }
 
 /**
- * The range in pieces, of which the first holds at most `room` cells: whole rows as long as one fits, otherwise a part
- * of the first row.
+ * The range in pieces, of which the first holds no more cells than wanted, but one at least: whole rows as long as
+ * one fits, otherwise a part of the first row.
  */
-export function splitRange(range: CellRange, room: number): [first: CellRange, ...rest: CellRange[]] {
+export function splitRange(range: CellRange, wanted: number): [first: CellRange, ...rest: CellRange[]] {
+  const room = Math.max(1, wanted);
   if (cellCountOf(range) <= room) {
     return [range];
   }
@@ -99,7 +100,7 @@ export function splitRange(range: CellRange, room: number): [first: CellRange, .
     const firstRow = { ...range, bottom: range.top };
     return [...splitRange(firstRow, room), { ...range, top: range.top + 1 }];
   }
-  const right = range.left + Math.max(1, room) - 1;
+  const right = range.left + room - 1;
   return [
     { ...range, right },
     { ...range, left: right + 1 },

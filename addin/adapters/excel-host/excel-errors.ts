@@ -15,7 +15,10 @@ interface Meaning {
 const retry = (code: WorkbookErrorCode, sentence: string): Meaning => ({ code, sentence, canRetry: true });
 const noRetry = (code: WorkbookErrorCode, sentence: string): Meaning => ({ code, sentence, canRetry: false });
 
-const tooLarge = noRetry('too-large', 'The workbook is larger than Excel hands out to an add-in.');
+const tooLarge = noRetry(
+  'too-large',
+  'The workbook is larger than Excel hands out to an add-in. Move the plan and its data into a workbook of their own.',
+);
 const vanished = retry(
   'changed-meanwhile',
   'Something that the plan needs was moved, renamed or deleted at this moment. Try again.',
@@ -85,7 +88,7 @@ const meanings: Readonly<Record<string, Meaning>> = {
   UnsupportedOperation: tooOld,
   UnsupportedSheet: noRetry(
     'not-readable',
-    'One of the sheets is of a kind that holds no cells for an add-in, such as a macro sheet.',
+    'One of the sheets is of a kind that holds no cells for an add-in, such as a macro sheet. Move it to another workbook.',
   ),
   WriteNotSupportedWhenModalDialogOpen: retry(
     'dialog-open',
