@@ -9,7 +9,7 @@ import {
   webDarkTheme,
   webLightTheme,
 } from '@fluentui/react-components';
-import { useSyncExternalStore, type ReactNode } from 'react';
+import { memo, useMemo, useSyncExternalStore, type ReactNode } from 'react';
 import { paneTexts } from '../wording/pane-texts';
 import type { PaneProgram } from './pane-program';
 import type { PaneState } from './pane-state';
@@ -35,8 +35,36 @@ export function PlanrowPane(props: { program: PaneProgram; isHostDark: boolean |
 
 function PaneFrame({ state, dispatch }: { state: PaneState; dispatch: Dispatch }): ReactNode {
   const styles = usePaneStyles();
+  const steady = useSteadyState(state);
   return (
     <div className={styles.frame}>
+      <SteadyParts state={steady} dispatch={dispatch} />
+      {state.chosen !== null && <SolveBar state={state} dispatch={dispatch} />}
+      <div role="status" aria-live="polite" className={styles.visuallyHidden}>
+        {/* Another key makes a sentence that is said twice be heard twice. */}
+        <span key={state.announcement.number}>{state.announcement.text}</span>
+      </div>
+    </div>
+  );
+}
+
+/**
+ * The state without the beat of progress: the same object until something else has changed, so that all but the bar
+ * is left alone while a plan is solved.
+ */
+function useSteadyState(state: PaneState): PaneState {
+  const { activity } = state;
+  const kept = { ...state, activity: activity.kind, announcement: null };
+  // The list of what counts has always the same length: the fields of the state.
+  return useMemo(() => state, Object.values(kept));
+}
+
+/** All but the bar and the live region. */
+const SteadyParts = memo(function SteadyParts(props: { state: PaneState; dispatch: Dispatch }): ReactNode {
+  const { state, dispatch } = props;
+  const styles = usePaneStyles();
+  return (
+    <>
       <header className={styles.header}>
         <h1 className={styles.title}>{paneTexts.title}</h1>
         {state.workbook !== null && <PlanChooser state={state} dispatch={dispatch} />}
@@ -46,14 +74,9 @@ function PaneFrame({ state, dispatch }: { state: PaneState; dispatch: Dispatch }
         {state.failure !== null && <FailureBar failure={state.failure} state={state} dispatch={dispatch} />}
         <MainView state={state} dispatch={dispatch} />
       </main>
-      {state.chosen !== null && <SolveBar state={state} dispatch={dispatch} />}
-      <div role="status" aria-live="polite" className={styles.visuallyHidden}>
-        {/* Another key makes a sentence that is said twice be heard twice. */}
-        <span key={state.announcement.number}>{state.announcement.text}</span>
-      </div>
-    </div>
+    </>
   );
-}
+});
 
 /** Two buttons of which one is down: the view that is shown. */
 function ViewSwitch({ state, dispatch }: { state: PaneState; dispatch: Dispatch }): ReactNode {

@@ -20,8 +20,20 @@ export interface PaneSurroundings {
   readonly repeat: (milliseconds: number, action: () => void) => () => void;
 }
 
+const quietMilliseconds = 1500;
+
+const writingCommands: ReadonlySet<PaneCommand['kind']> = new Set<PaneCommand['kind']>([
+  'write-statement',
+  'solve',
+  'write-results',
+  'put-back',
+  'end-journal',
+]);
+
 export class PaneEffects {
   private stopSolve: (() => void) | null = null;
+  /** Ends the time in which hints of change are taken for echoes of our own writing. */
+  private endQuiet: (() => void) | null = null;
 
   constructor(
     private readonly surroundings: PaneSurroundings,
@@ -32,7 +44,9 @@ export class PaneEffects {
   async watch(): Promise<void> {
     const { host } = this.surroundings;
     try {
-      await host.changes.watch(() => this.dispatch({ kind: 'workbook-changed' }));
+      await host.changes.watch(() => {
+        if (this.endQuiet === null) this.dispatch({ kind: 'workbook-changed' });
+      });
       await host.selection.watch(() => void this.readSelection());
     } catch (error) {
       if (!(error instanceof WorkbookError)) {
@@ -44,6 +58,9 @@ export class PaneEffects {
   async perform(command: PaneCommand): Promise<void> {
     try {
       await this.performOrThrow(command);
+      if (writingCommands.has(command.kind)) {
+        this.keepQuiet();
+      }
     } catch (error) {
       this.dispatch({ kind: 'failed', failure: this.failureOf(error, command) });
     }
@@ -104,6 +121,19 @@ export class PaneEffects {
         this.dispatch({ kind: 'journal-ended', way: command.way });
         return;
     }
+  }
+
+  /**
+   * Older hosts do not say who made a change, and tell of our own after it is long done. What others change within
+   * these moments is found all the same when the plan is next solved or written.
+   */
+  private keepQuiet(): void {
+    this.endQuiet?.();
+    const end = this.surroundings.repeat(quietMilliseconds, () => {
+      end();
+      this.endQuiet = null;
+    });
+    this.endQuiet = end;
   }
 
   private async solve(command: Extract<PaneCommand, { kind: 'solve' }>): Promise<void> {

@@ -13,6 +13,9 @@ type Reply = WorkerReply extends infer R
     : never
   : never;
 
+/** Milliseconds between two words on the progress: more often nobody can read it. */
+const progressMilliseconds = 150;
+
 export class RequestAnswerer {
   private readonly stopped = new Set<number>();
   private work: Promise<void> = Promise.resolve();
@@ -55,11 +58,18 @@ export class RequestAnswerer {
           break;
         }
         case 'solve': {
+          let saidAt = -Infinity;
           const outcome = await solvePlan(workbook, request.task, {
             pacing: this.pacing,
             isStopping: () => this.stopped.has(id),
             onStage: (stage) => reply({ kind: 'stage', stage }),
-            onProgress: (progress) => reply({ kind: 'progress', progress }),
+            onProgress: (progress) => {
+              const now = this.pacing.now();
+              if (now - saidAt >= progressMilliseconds) {
+                saidAt = now;
+                reply({ kind: 'progress', progress });
+              }
+            },
           });
           const writes = outcome.kind === 'solved' ? outcome.writes : null;
           reply({

@@ -95,36 +95,34 @@ export function buffersOf(packed: PackedWorkbook): ArrayBuffer[] {
 }
 
 function packSheet(sheet: SheetSnapshot): PackedSheet {
-  let count = 0;
-  sheet.forEachCell(() => count++);
-  const rows = new Uint32Array(count);
-  const columns = new Uint32Array(count);
-  const kinds = new Uint8Array(count);
-  const numbers = new Float64Array(count);
-  const formatsAndDates = new Uint32Array(count);
+  // One pass only: some sheets make their cells anew each time they are asked for.
+  const rows: number[] = [];
+  const columns: number[] = [];
+  const kinds: number[] = [];
+  const numbers: number[] = [];
+  const formatsAndDates: number[] = [];
   const texts: string[] = [];
   const formulaCells: number[] = [];
   const formulas: string[] = [];
   const formats = new Map<string, number>();
   const arrays: { cell: number; range: CellRange }[] = [];
-  let at = 0;
   sheet.forEachCell((row, column, cell) => {
     const { value, formula, numberFormat } = cell;
-    rows[at] = row;
-    columns[at] = column;
-    kinds[at] = kindOf(value);
-    if (typeof value === 'number') numbers[at] = value;
-    else if (typeof value === 'string') texts.push(value);
+    const at = rows.length;
+    rows.push(row);
+    columns.push(column);
+    kinds.push(kindOf(value));
+    numbers.push(typeof value === 'number' ? value : 0);
+    if (typeof value === 'string') texts.push(value);
     else if (value instanceof CellError) texts.push(value.code);
     const format = formats.get(numberFormat) ?? formats.size;
     formats.set(numberFormat, format);
-    formatsAndDates[at] = 2 * format + (cell.isDate ? 1 : 0);
+    formatsAndDates.push(2 * format + (cell.isDate ? 1 : 0));
     if (formula !== undefined) {
       formulaCells.push(at);
       formulas.push(formula);
     }
     if (cell.arrayRange !== undefined) arrays.push({ cell: at, range: cell.arrayRange });
-    at++;
   });
   const { name, visibility, isProtected, rowCount, columnCount, hasActiveFilter } = sheet;
   const { mergedRanges, notedCells, pivotRanges } = sheet;
@@ -134,7 +132,12 @@ function packSheet(sheet: SheetSnapshot): PackedSheet {
     // Results may be placed beyond what is used, and not where it is hidden.
     hiddenRows: linesThat(rowCount + 1 + searchedLaneCount, (row) => sheet.isRowHidden(row)),
     hiddenColumns: linesThat(columnCount + 1 + searchedLaneCount, (column) => sheet.isColumnHidden(column)),
-    ...{ rows, columns, kinds, numbers, formatsAndDates, arrays },
+    rows: Uint32Array.from(rows),
+    columns: Uint32Array.from(columns),
+    kinds: Uint8Array.from(kinds),
+    numbers: Float64Array.from(numbers),
+    formatsAndDates: Uint32Array.from(formatsAndDates),
+    arrays,
     texts: packTexts(texts),
     formulaCells: Uint32Array.from(formulaCells),
     formulas: packTexts(formulas),

@@ -52,7 +52,10 @@ export async function paneAtWork(
     host: parts,
     engine: over.engine ?? inlineEngine,
     today: () => 46_000,
-    repeat: () => () => undefined,
+    repeat: (_milliseconds, action) => {
+      const turn = setImmediate(action);
+      return () => clearImmediate(turn);
+    },
   });
   const said: string[] = [];
   let heard = 0;
