@@ -10,10 +10,11 @@
 import { tolerances } from '../control/tolerances';
 import { grownFloat64, grownInt32 } from '../numerics/growable-arrays';
 import type { ScatteredVector } from '../sparse/scattered-vector';
-import type { SparseMatrix } from '../sparse/sparse-matrix';
+import { nonzeroCount, type SparseMatrix } from '../sparse/sparse-matrix';
 import { appendUpdate, type UpdateOutcome } from './forrest-tomlin-update';
 import { LuFactorizer, type FactorizeOutcome } from './lu-factorize';
 import { LuFactors } from './lu-factors';
+import { RenewalPolicy } from './renewal-policy';
 import { divideInOrder, eliminateInOrder, reachOf, type ReachScratch } from './triangular-solve';
 
 /** A right side with more than this share of nonzeros is not worth a search for what it reaches. */
@@ -25,8 +26,8 @@ const densityMemory = 0.05;
 
 /** What is solved for: solutions of one kind have about the same density from one iteration to the next. */
 export type SolveKind = 'entering column' | 'tableau row' | 'edge weights' | 'other';
-/** Updates after which the factors are renewed whatever their state: fewer for small bases, whose factors cost little. */
-const mostUpdates = (rowCount: number): number => Math.min(100, 40 + Math.floor(rowCount / 20));
+/** Updates after which the factors are renewed whatever they cost: errors grow with each. */
+const mostUpdates = 100;
 
 export class BasisFactorization {
   private readonly factors: LuFactors;
@@ -40,9 +41,13 @@ export class BasisFactorization {
   private rowEtaIndex = new Int32Array(64);
   private rowEtaValue = new Float64Array(64);
   private rowEtaCount = 0;
-  private freshEntries = 0;
-  /** Work units spent in here since the last time that the caller took them. */
+  /** Work units spent in here so far, those that the caller has taken, and those before the last update. */
   private work = 0;
+  private takenWork = 0;
+  private workAtUpdate = 0;
+  /** Entries touched by the solve under way. */
+  private readonly tally = new Float64Array(1);
+  private readonly renewal = new RenewalPolicy();
   private threshold: number = tolerances.markowitzThreshold;
   /** Share of nonzeros in recent solutions, by kind. */
   private readonly expectedDensity: Record<SolveKind, number> = {
@@ -66,8 +71,8 @@ export class BasisFactorization {
 
   /** Work done since the last call. */
   takeWork(): number {
-    const work = this.work;
-    this.work = 0;
+    const work = this.work - this.takenWork;
+    this.takenWork = this.work;
     return work;
   }
 
@@ -83,17 +88,16 @@ export class BasisFactorization {
       drop: tolerances.factorDrop,
       singularPivot: tolerances.singularPivot,
     });
-    this.freshEntries = this.factors.upperSize + this.factors.lowerSize;
     this.work += outcome.work;
+    this.workAtUpdate = this.work;
+    // With new factors come new values and reduced costs: about two passes over the matrix.
+    this.renewal.noteFactorization(outcome.work, 2 * nonzeroCount(this.matrix));
     return outcome;
   }
 
-  /** Enough updates or fill to be worth new factors. */
+  /** Enough updates, or solves that have become dear enough, to be worth new factors. */
   get shouldRefactorize(): boolean {
-    const { etaCount, upperEntryCount, lowerSize } = this.factors;
-    if (etaCount >= mostUpdates(this.matrix.rowCount)) return true;
-    const entries = upperEntryCount + lowerSize + (this.factors.etaStart[etaCount] ?? 0);
-    return entries > 3 * this.freshEntries + 2 * this.matrix.rowCount + 1000;
+    return this.factors.etaCount >= mostUpdates || this.renewal.isDue;
   }
 
   /**
@@ -123,6 +127,8 @@ export class BasisFactorization {
   }
 
   private learnDensity(kind: SolveKind, x: ScatteredVector): void {
+    this.work += this.tally[0];
+    this.tally[0] = 0;
     const density = x.count / this.factors.rowCount;
     this.expectedDensity[kind] += densityMemory * (density - this.expectedDensity[kind]);
   }
@@ -141,6 +147,8 @@ export class BasisFactorization {
       { index: this.rowEtaIndex, value: this.rowEtaValue, count: this.rowEtaCount },
     );
     this.work += this.spikeCount + 2 * this.rowEtaCount;
+    this.renewal.noteUpdate(this.work - this.workAtUpdate);
+    this.workAtUpdate = this.work;
     return outcome;
   }
 
@@ -251,6 +259,7 @@ export class BasisFactorization {
       tolerances.solveDrop,
       x.value,
       x.index,
+      this.tally,
     );
     this.work += f.upperCount + x.count;
   }
@@ -278,6 +287,7 @@ export class BasisFactorization {
       tolerances.solveDrop,
       y.value,
       y.index,
+      this.tally,
     );
     this.work += f.upperCount + y.count;
   }
@@ -303,6 +313,7 @@ export class BasisFactorization {
       tolerances.solveDrop,
       x.value,
       x.index,
+      this.tally,
     );
     this.work += 2 * found;
   }

@@ -41,7 +41,8 @@ export function eliminateInOrder(
 /**
  * The same with a diagonal, for U: x[row] is divided before it is passed on. Entries of magnitude below `drop`
  * become 0. `order` may hold −1 for pivots moved elsewhere. The places that end nonzero are listed in `list`.
- * hot: every ftran and btran that is not hyper-sparse.
+ * hot: every ftran and btran.
+ * @param tally its first entry is raised by the number of entries touched
  * @returns number of places listed
  */
 export function divideInOrder(
@@ -57,7 +58,9 @@ export function divideInOrder(
   drop: number,
   x: Float64Array,
   list: Int32Array,
+  tally: Float64Array,
 ): number {
+  let touched = 0;
   let listed = 0;
   const stop = first + step * count;
   for (let k = first; k !== stop; k += step) {
@@ -74,7 +77,9 @@ export function divideInOrder(
     list[listed++] = row;
     const last = end[row];
     for (let at = start[row]; at < last; at++) x[index[at]] -= pivotValue * value[at];
+    touched += last - start[row];
   }
+  tally[0] += touched;
   return listed;
 }
 

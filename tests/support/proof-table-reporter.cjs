@@ -11,11 +11,17 @@ const rooms = ['tests/properties/', 'tests/suite/'];
 module.exports = class ProofTableReporter {
   onRunComplete(_contexts, results) {
     const rows = results.testResults
-      .map((file) => ({ file: path.relative(root, file.testFilePath).split(path.sep).join('/'), tests: file.testResults }))
+      .map((file) => ({
+        file: path.relative(root, file.testFilePath).split(path.sep).join('/'),
+        tests: file.testResults,
+      }))
       .filter(({ file }) => rooms.some((room) => file.startsWith(room)))
       .sort((a, b) => a.file.localeCompare(b.file, 'en'))
       .flatMap(({ file, tests }) =>
-        tests.map((test) => `| ${file.replace(/^tests\//, '')} | ${test.fullName.replaceAll('|', '\\|')} | ${test.status} |`),
+        tests.map(
+          (test) =>
+            `| ${file.replace(/^tests\//, '')} | ${test.fullName.replaceAll('|', '\\|')} | ${test.status} |`,
+        ),
       );
     const text = [
       '# Proved in full',
