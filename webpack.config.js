@@ -64,7 +64,7 @@ const paneBuild = (mode) => ({
   ...shared,
   name: 'pane',
   mode,
-  target: 'web',
+  target: ['web', 'es2022'],
   entry: { pane: './addin/pane/main.ts' },
   output: {
     path: path.join(output, 'pane'),

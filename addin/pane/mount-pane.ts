@@ -12,4 +12,11 @@ export function mountPane(element: Element, surroundings: PaneSurroundings, comm
   const program = new PaneProgram(surroundings);
   createRoot(element).render(createElement(PlanrowPane, { program, isHostDark: surroundings.host.isDark() }));
   program.start(command);
+  const stop = program.subscribe(() => {
+    if (program.state().workbook !== null) {
+      stop();
+      // Seen in the browser's own timeline: from here on a press is accepted.
+      requestAnimationFrame(() => performance.mark('usable'));
+    }
+  });
 }

@@ -79,14 +79,14 @@ function RowLabel({ line }: { line: ConstraintOutcome }): ReactNode {
   return (
     <>
       <div className={styles.clipped} title={`${line.label}, ${formatCellAddress(line.cell)}`}>
+        {line.label}
+      </div>
+      <div className={`${styles.gloss} ${styles.clipped}`}>
         {line.isBinding && (
           <>
             <span className={styles.badge}>{paneTexts.binding}</span>{' '}
           </>
         )}
-        {line.label}
-      </div>
-      <div className={`${styles.gloss} ${styles.clipped}`}>
         {paneTexts.sides(line.leftSide, line.relation, line.rightSide)}
       </div>
     </>

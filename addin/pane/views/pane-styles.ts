@@ -23,12 +23,13 @@ export const usePaneStyles = makeStyles({
     gap: tokens.spacingVerticalS,
     paddingTop: tokens.spacingVerticalS,
     paddingLeft: tokens.spacingHorizontalM,
-    // The spreadsheet program lays its own menu over the top right corner.
-    paddingRight: '40px',
+    paddingRight: tokens.spacingHorizontalM,
     borderBottom: `1px solid ${tokens.colorNeutralStroke2}`,
   },
   title: {
     margin: 0,
+    // The spreadsheet program lays its own menu over the top right corner.
+    paddingRight: '34px',
     fontSize: tokens.fontSizeBase400,
     fontWeight: tokens.fontWeightSemibold,
     lineHeight: tokens.lineHeightBase400,
@@ -84,6 +85,7 @@ export const usePaneStyles = makeStyles({
     display: 'flex',
     flexDirection: 'column',
     gap: tokens.spacingVerticalS,
+    marginBottom: tokens.spacingVerticalS,
     padding: tokens.spacingHorizontalM,
     border: `1px solid ${tokens.colorNeutralStrokeAccessible}`,
     borderRadius: tokens.borderRadiusMedium,

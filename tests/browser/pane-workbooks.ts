@@ -1,8 +1,8 @@
 /**
  * Workbooks for the pane's browser tests, all of the invented tile works.
  */
-import { MemoryWorkbook, type CellContent } from '../../../addin/adapters/memory/memory-workbook';
-import { cellText } from '../../../addin/domain/sheet/cell-address';
+import { MemoryWorkbook, type CellContent } from '../../addin/adapters/memory/memory-workbook';
+import { cellText } from '../../addin/domain/sheet/cell-address';
 
 /** Three tiles, press and kiln hours, one order; see tile-works.ts for the same plan as a table. */
 const tileCells: Record<string, CellContent> = {
@@ -29,7 +29,7 @@ const tileNames = {
   'Week.Upper': 'Plan!$E$2:$E$4',
 };
 
-/** A third of the hours, as many tiles as asked for, each row a SUMPRODUCT over 30 of them. Seed 7. */
+/** Kiln loads as many as asked for, each limit a SUMPRODUCT over 30 of them. Seed 7. */
 function largeWorkbook(decisions: number, rows: number): MemoryWorkbook {
   const width = 30;
   let state = 7;
@@ -84,18 +84,23 @@ function largeWorkbook(decisions: number, rows: number): MemoryWorkbook {
   });
 }
 
-export const pageWorkbooks: Readonly<Record<string, () => MemoryWorkbook>> = {
+export const paneWorkbooks = {
   tiles: () => MemoryWorkbook.of({ sheets: { Plan: tileCells }, names: tileNames }),
   unstated: () => MemoryWorkbook.of({ sheets: { Plan: tileCells, 'Cost data': { A1: 1 } } }),
   faulty: () =>
     MemoryWorkbook.of({
-      sheets: { Plan: { ...tileCells, C7: null, C8: '<', D9: 'fifteen' } },
+      sheets: { Plan: { ...tileCells, C7: 'under', C8: '<', D9: 'fifteen' } },
       names: tileNames,
     }),
   infeasible: () => MemoryWorkbook.of({ sheets: { Plan: { ...tileCells, D9: 200 } }, names: tileNames }),
   filtered: () =>
-    MemoryWorkbook.of({ sheets: { Plan: tileCells }, names: tileNames, filteredSheets: ['Plan'] }),
+    MemoryWorkbook.of({
+      sheets: { Plan: tileCells },
+      names: tileNames,
+      hiddenRows: { Plan: [3] },
+      filteredSheets: ['Plan'],
+    }),
   protected: () =>
     MemoryWorkbook.of({ sheets: { Plan: tileCells }, names: tileNames, protectedSheets: ['Plan'] }),
   large: () => largeWorkbook(3000, 1200),
-};
+} satisfies Record<string, () => MemoryWorkbook>;
