@@ -99,6 +99,7 @@ const plan: WritePlan = [
 /** Whatever has not been answered after a turn of the loop never is: the far end answers at once. */
 const timing: ExcelTiming = {
   secondsToWait: 60,
+  pause: () => Promise.resolve(),
   startTimer: (_seconds, callback) => {
     const timer = setImmediate(() => setImmediate(callback));
     return () => clearImmediate(timer);

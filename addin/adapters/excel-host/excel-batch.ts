@@ -13,6 +13,8 @@ export interface ExcelTiming {
   readonly secondsToWait: number;
   /** Calls back once, after that many seconds, unless the returned function is called before. */
   readonly startTimer: (seconds: number, callback: () => void) => () => void;
+  /** Ends once whatever else waits on this thread, such as a press, has had its turn. */
+  readonly pause: () => Promise<void>;
 }
 
 export const usualTiming: ExcelTiming = {
@@ -21,12 +23,24 @@ export const usualTiming: ExcelTiming = {
     const timer = setTimeout(callback, seconds * 1000);
     return () => clearTimeout(timer);
   },
+  // A message comes at once where a timer would be held back.
+  pause: () =>
+    new Promise((resolve) => {
+      const { port1, port2 } = new MessageChannel();
+      port1.onmessage = () => {
+        port1.close();
+        resolve();
+      };
+      port2.postMessage(null);
+    }),
 };
 
 export interface OpenBatch {
   readonly context: Excel.RequestContext;
   /** One round trip: sends what was asked for since the last one, and waits for the answer. */
   readonly sync: () => Promise<void>;
+  /** Between two long pieces of work on what was read: lets the pane's thread hear a press. */
+  readonly pause: () => Promise<void>;
 }
 
 /** What the library gives for an event that was registered. */
@@ -49,7 +63,10 @@ export class ExcelBatches {
     let giveUp: (error: WorkbookError) => void = () => undefined;
     const givenUp = new Promise<never>((_resolve, reject) => (giveUp = reject));
     givenUp.catch(() => undefined);
-    const running = Excel.run((context) => work({ context, sync: () => this.syncInTime(context, giveUp) }));
+    const { pause } = this.timing;
+    const running = Excel.run((context) =>
+      work({ context, sync: () => this.syncInTime(context, giveUp), pause }),
+    );
     running.catch(() => undefined);
     try {
       return await Promise.race([running, givenUp]);

@@ -15,11 +15,13 @@ export function contentsOf(
   range: CellRange,
   loaded: Excel.Range,
 ): { readonly cell: CellAddress; readonly content: CellContent }[] {
+  // The library looks its requirement sets up at every reading of a property, so each is read once.
+  const { values, formulas, valueTypes } = loaded;
   return cellsOf(range).map((cell) => {
     const [down, across] = [cell.row - range.top, cell.column - range.left];
-    const value: unknown = loaded.values[down][across];
-    const formula = formulaOf(loaded.formulas[down][across], value);
-    const type = loaded.valueTypes[down][across];
+    const value: unknown = values[down][across];
+    const formula = formulaOf(formulas[down][across], value);
+    const type = valueTypes[down][across];
     return { cell, content: { value: valueOf(value, type, formula !== undefined), formula } };
   });
 }

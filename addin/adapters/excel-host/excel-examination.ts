@@ -16,6 +16,7 @@ import { findSheet, type WorkbookSnapshot } from '../../domain/sheet/sheet-snaps
 import { recordNamespace } from '../../domain/results-to-sheet/record-text';
 import { nothingWritten, type CellEdit, type PlannedEdits } from '../../ports/planned-edits';
 import { WorkbookError } from '../../ports/workbook';
+import { CellMap } from './cell-map';
 import type { OpenBatch } from './excel-batch';
 import { firstGuess, messageTarget, RangeQueue } from './excel-chunking';
 import { isAnswerTooLarge } from './excel-errors';
@@ -33,6 +34,7 @@ import {
 import { listRanges, rangesOfAddress } from './excel-ranges';
 import { rectanglesOf } from './excel-rectangles';
 import { xmlOfRecord } from './excel-record';
+import { arrayRangesOf } from './excel-sheet';
 import type { ExcelAbilities } from './excel-requirements';
 import { pointsOfCharacters } from './excel-widths';
 
@@ -59,14 +61,18 @@ export async function examine(
   for (let bytesPerCell = firstGuess; ; bytesPerCell *= moreRoom) {
     try {
       const examination = new Examination(batch.context, edits, abilities, basis, bytesPerCell);
+      await batch.pause();
       const fingerprint = basis === undefined ? undefined : new Fingerprint(batch.context, basis);
       let isDone: boolean;
       do {
         const room = messageTarget - examination.requestTargets();
         fingerprint?.request(room);
         await batch.sync();
+        await batch.pause();
         examination.refuseImpossible();
+        await batch.pause();
         fingerprint?.compare();
+        await batch.pause();
         isDone = examination.isDone && fingerprint?.isDone !== false;
       } while (!isDone);
       return { journal: examination.journal(), recordPartId: examination.recordPartId };
@@ -158,13 +164,16 @@ class Examination {
       cells.filter(isStored).map(({ cell }) => cell),
       `formulas${this.arrayProperties}`,
     );
-    const sources = new Map<string, CellAddress>();
+    const sources: CellAddress[] = [];
+    const known = new CellMap<true>();
     for (const { cells: ofSheet } of edits.sheets.values()) {
       for (const { numberFormatOf: source } of ofSheet.values()) {
-        if (source !== undefined && !isAdded(source.sheet)) sources.set(formatCellAddress(source), source);
+        if (source === undefined || isAdded(source.sheet) || known.get(source) === true) continue;
+        known.set(source, true);
+        sources.push(source);
       }
     }
-    this.formatSources = this.requestRanges([...sources.values()], 'numberFormat');
+    this.formatSources = this.requestRanges(sources, 'numberFormat');
     this.wrapped = written
       .filter(({ wrapsText }) => wrapsText)
       .map(({ cell }) => {
@@ -257,13 +266,11 @@ class Examination {
     this.refuseChanged();
     this.newTargets.forEach((target) => this.refuseOverwriting(target));
     for (const { range, loaded } of this.formulaCells) {
+      const isFilled = this.filledIn({ range, loaded });
       loaded.formulas.forEach((row, down) =>
         row.forEach((formula: unknown, across) => {
           const cell = { sheet: range.sheet, row: range.top + down, column: range.left + across };
-          if (
-            !(typeof formula === 'string' && formula.startsWith('=')) &&
-            !this.isFilled(cell, { range, loaded })
-          ) {
+          if (!(typeof formula === 'string' && formula.startsWith('=')) && !isFilled(cell)) {
             const why = `${formatCellAddress(cell)} holds no formula whose value could be renewed`;
             throw refusal('write-failed', why);
           }
@@ -273,21 +280,22 @@ class Examination {
   }
 
   journal(): Journal {
-    const formatOfSource = new Map<string, string>();
+    const formatOfSource = new CellMap<string>();
     for (const { range, loaded } of this.formatSources) {
+      const { numberFormat } = loaded;
       for (const cell of cellsOf(range)) {
-        const format: unknown = loaded.numberFormat[cell.row - range.top][cell.column - range.left];
-        formatOfSource.set(formatCellAddress(cell), String(format));
+        const format: unknown = numberFormat[cell.row - range.top][cell.column - range.left];
+        formatOfSource.set(cell, String(format));
       }
     }
-    const wrapsBefore = new Map<string, boolean>();
+    const wrapsBefore = new CellMap<boolean>();
     for (const { range, format } of this.wrapped) {
-      wrapsBefore.set(formatCellAddress(firstCell(range)), format.wrapText);
+      wrapsBefore.set(firstCell(range), format.wrapText);
     }
     const changeOf = (cell: CellAddress, edit: CellEdit, before: CellContent, format: string): CellChange => {
       const after = contentAfter(edit);
       const source = edit.numberFormatOf;
-      const wanted = (source && formatOfSource.get(formatCellAddress(source))) ?? format;
+      const wanted = (source && formatOfSource.get(source)) ?? format;
       return {
         cell,
         before,
@@ -295,16 +303,16 @@ class Examination {
         formatBefore: format,
         // A number that is written into a cell for texts would become a text.
         formatAfter: wanted === textFormat && typeof after.value !== 'string' ? 'General' : wanted,
-        wrapsBefore: edit.wrapsText ? (wrapsBefore.get(formatCellAddress(cell)) ?? false) : undefined,
+        wrapsBefore: edit.wrapsText ? (wrapsBefore.get(cell) ?? false) : undefined,
         wrapsAfter: edit.wrapsText ? true : undefined,
       };
     };
     const cells: CellChange[] = [];
     for (const { range, loaded } of this.targets) {
       const ofSheet = this.edits.sheets.get(range.sheet)!.cells;
-      const contents = contentsOf(range, loaded);
-      for (const { cell, content } of contents) {
-        const format: unknown = loaded.numberFormat[cell.row - range.top][cell.column - range.left];
+      const { numberFormat } = loaded;
+      for (const { cell, content } of contentsOf(range, loaded)) {
+        const format: unknown = numberFormat[cell.row - range.top][cell.column - range.left];
         cells.push(changeOf(cell, ofSheet.get(cellKey(cell.row, cell.column))!, content, String(format)));
       }
     }
@@ -403,9 +411,10 @@ class Examination {
     const changed = this.newTargets.flatMap(({ range, loaded }) => {
       const sheet = findSheet(this.basis!, range.sheet);
       if (sheet === undefined) return [];
+      const isFilled = this.filledIn({ range, loaded });
       return contentsOf(range, loaded).filter(({ cell, content }) => {
         const { value = null, formula } = sheet.cell(cell.row, cell.column) ?? {};
-        return !this.isFilled(cell, { range, loaded }) && !holds(content, { value, formula });
+        return !isFilled(cell) && !holds(content, { value, formula });
       });
     });
     if (changed.length > 0) {
@@ -418,44 +427,43 @@ class Examination {
     const { range, loaded, merged } = target;
     const covered =
       merged === undefined || merged.isNullObject ? [] : rangesOfAddress(range.sheet, merged.address);
+    const isFilled = this.filledIn(target);
     for (const { cell, content } of contentsOf(range, loaded)) {
-      const at = formatCellAddress(cell);
-      if (content.formula !== undefined) throw refusal('would-overwrite', `${at} holds a formula`);
-      if (this.isFilled(cell, target)) {
-        throw refusal('would-overwrite', `${at} is filled by an array formula`);
-      }
+      const refuse = (what: string): never => {
+        throw refusal('would-overwrite', `${formatCellAddress(cell)} ${what}`);
+      };
+      if (content.formula !== undefined) refuse('holds a formula');
+      if (isFilled(cell)) refuse('is filled by an array formula');
       const cover = covered.find((area) => containsCell(area, cell));
       if (cover !== undefined && (cover.top !== cell.row || cover.left !== cell.column)) {
-        throw refusal('would-overwrite', `${at} is covered by a merged cell`);
+        refuse('is covered by a merged cell');
       }
       const edit = this.edits.sheets.get(cell.sheet)!.cells.get(cellKey(cell.row, cell.column))!;
       const isEmptied = edit.content.kind === 'formula' && edit.content.replacesValue;
       if (edit.content.kind === 'formula' && !isEmptied && content.value !== null) {
-        throw refusal('would-overwrite', `${at} already holds a value`);
+        refuse('already holds a value');
       }
     }
   }
 
-  /** Cell by cell as the workbook was read; where no array was known, Excel says it of the whole range. */
-  private isFilled(cell: CellAddress, { range, loaded }: LoadedTarget): boolean {
-    const known = this.arraysOf(cell.sheet);
-    if (known.some((array) => rangesOverlap(array, range))) {
-      return known.some((array) => containsCell(array, cell));
-    }
-    return this.abilities.findsArrays && (loaded.hasSpill !== false || loaded.savedAsArray !== false);
+  /**
+   * Which cells of a range an array formula fills: cell by cell as the workbook was read; where no array was known,
+   * Excel says it of the whole range.
+   */
+  private filledIn({ range, loaded }: LoadedTarget): (cell: CellAddress) => boolean {
+    const known = this.arraysOf(range.sheet).filter((array) => rangesOverlap(array, range));
+    if (known.length > 0) return (cell) => known.some((array) => containsCell(array, cell));
+    const isFilled =
+      this.abilities.findsArrays && (loaded.hasSpill !== false || loaded.savedAsArray !== false);
+    return () => isFilled;
   }
 
   /** What array formulas filled when the workbook was read. */
   private arraysOf(sheetName: string): readonly CellRange[] {
     let arrays = this.arrays.get(sheetName);
     if (arrays === undefined) {
-      const found: CellRange[] = [];
-      this.basis?.sheets
-        .find(({ name }) => name === sheetName)
-        ?.forEachCell((_row, _column, { arrayRange }) => {
-          if (arrayRange !== undefined) found.push(arrayRange);
-        });
-      arrays = found;
+      const sheet = this.basis?.sheets.find(({ name }) => name === sheetName);
+      arrays = sheet === undefined ? [] : arrayRangesOf(sheet);
       this.arrays.set(sheetName, arrays);
     }
     return arrays;

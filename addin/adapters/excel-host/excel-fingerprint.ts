@@ -7,7 +7,7 @@
  * the same results.
  */
 import { cellKey } from '../../domain/sheet/cell-address';
-import { cellsOf, rangesOverlap, type CellRange } from '../../domain/sheet/cell-range';
+import { cellCountOf, cellsOf, rangesOverlap, type CellRange } from '../../domain/sheet/cell-range';
 import { CellError } from '../../domain/sheet/cell-value';
 import type { DefinedName } from '../../domain/sheet/defined-name';
 import { findSheet, type SheetSnapshot, type WorkbookSnapshot } from '../../domain/sheet/sheet-snapshot';
@@ -18,10 +18,10 @@ import { WorkbookError } from '../../ports/workbook';
 import { RangeQueue } from './excel-chunking';
 import { cellRangeOf, listRanges, placeOfRange } from './excel-ranges';
 import { definedNameOf } from './excel-reading';
-import { ExcelSheet } from './excel-sheet';
+import { arrayRangesOf, ExcelSheet } from './excel-sheet';
 
-/** Cells sampled to learn how long their entries are. */
-const sampleSize = 5_000;
+/** Bytes of an entry beside its own text: quotes, comma, the sign of a formula. */
+const entryOverhead = 4;
 
 /** A comparison under way: `request` before a round trip, `compare` after it, until `isDone`. */
 export class Fingerprint {
@@ -254,29 +254,29 @@ function entryIn(sheet: SheetSnapshot, row: number, column: number): unknown {
 /** Cells that an array formula fills, its first one apart: they follow from that one. */
 function filledCellsOf(sheet: SheetSnapshot): Set<number> {
   const filled = new Set<number>();
-  sheet.forEachCell((row, column, { arrayRange }) => {
-    if (arrayRange === undefined) return;
-    for (const cell of cellsOf(arrayRange)) {
-      if (cell.row !== row || cell.column !== column) filled.add(cellKey(cell.row, cell.column));
-    }
-  });
+  for (const range of arrayRangesOf(sheet)) {
+    for (const { row, column } of cellsOf(range).slice(1)) filled.add(cellKey(row, column));
+  }
   return filled;
 }
 
 /** The mean length of an entry as JSON, blanks of the extents included. */
 function bytesPerEntry(workbook: WorkbookSnapshot): number {
   let bytes = 0;
-  let entries = 0;
   let places = 0;
   for (const sheet of workbook.sheets) {
-    places += sheet.rowCount * sheet.columnCount;
-    sheet.forEachCell((_row, _column, { formula, value }) => {
-      entries++;
-      if (entries <= sampleSize)
-        bytes += formula === undefined ? String(value).length + 1 : formula.length + 4;
-    });
+    const extent = extentOf(sheet);
+    if (extent === undefined) continue;
+    places += cellCountOf(extent);
+    bytes += sheet instanceof ExcelSheet ? sheet.entryLength : entryLengthOf(sheet);
   }
-  const sampled = Math.min(entries, sampleSize);
-  const perEntry = sampled === 0 ? 3 : bytes / sampled;
-  return places === 0 ? 3 : 3 + (perEntry * entries) / places;
+  return entryOverhead + bytes / Math.max(1, places);
+}
+
+function entryLengthOf(sheet: SheetSnapshot): number {
+  let length = 0;
+  sheet.forEachCell((_row, _column, { formula, value }) => {
+    length += (formula ?? String(value)).length;
+  });
+  return length;
 }

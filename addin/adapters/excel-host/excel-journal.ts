@@ -1,9 +1,10 @@
 /**
  * What a write changes, with what was there before: enough to finish it, or to take it back, at any later time.
  */
-import { formatCellAddress, type CellAddress } from '../../domain/sheet/cell-address';
+import type { CellAddress } from '../../domain/sheet/cell-address';
 import type { CellRange } from '../../domain/sheet/cell-range';
 import type { CellValue } from '../../domain/sheet/cell-value';
+import { CellMap } from './cell-map';
 import { rangesOfAddress } from './excel-ranges';
 import { rectanglesOf } from './excel-rectangles';
 
@@ -104,6 +105,8 @@ export function rangesOfJournal({ cells, names }: Journal): CellRange[] {
   });
 }
 
-export function changesByCell(changes: readonly CellChange[]): Map<string, CellChange> {
-  return new Map(changes.map((change) => [formatCellAddress(change.cell), change]));
+export function changesByCell(changes: readonly CellChange[]): CellMap<CellChange> {
+  const byCell = new CellMap<CellChange>();
+  changes.forEach((change) => byCell.set(change.cell, change));
+  return byCell;
 }

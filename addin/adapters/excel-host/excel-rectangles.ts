@@ -1,7 +1,7 @@
 /**
  * Draws single cells together into rectangles, so that a column of results is one range for Excel and not a thousand.
  */
-import type { CellAddress } from '../../domain/sheet/cell-address';
+import { maximumRowCount, type CellAddress } from '../../domain/sheet/cell-address';
 import type { CellRange } from '../../domain/sheet/cell-range';
 
 /** Rectangles that hold each of the cells once, and no other cell. */
@@ -22,23 +22,28 @@ export function rectanglesOf(cells: readonly CellAddress[]): CellRange[] {
   return [...closed, ...open.values()];
 }
 
-/** Cells below one another, column by column. */
+/** Cells below one another, column by column, sheet by sheet. */
 function upwardRunsOf(cells: readonly CellAddress[]): CellRange[] {
-  const sorted = [...cells].sort(
-    (a, b) => compareText(a.sheet, b.sheet) || a.column - b.column || a.row - b.row,
-  );
-  const runs: CellRange[] = [];
-  for (const { sheet, row, column } of sorted) {
-    const last = runs[runs.length - 1];
-    if (last !== undefined && last.sheet === sheet && last.left === column && last.bottom === row - 1) {
-      runs[runs.length - 1] = { ...last, bottom: row };
-    } else {
-      runs.push({ sheet, top: row, left: column, bottom: row, right: column });
-    }
+  const keysBySheet = new Map<string, number[]>();
+  for (const { sheet, row, column } of cells) {
+    const key = column * maximumRowCount + row;
+    const keys = keysBySheet.get(sheet);
+    if (keys === undefined) keysBySheet.set(sheet, [key]);
+    else keys.push(key);
   }
-  return runs;
-}
-
-function compareText(a: string, b: string): number {
-  return a < b ? -1 : a > b ? 1 : 0;
+  return [...keysBySheet].flatMap(([sheet, keys]) => {
+    // Down a column, one key follows another.
+    const sorted = Float64Array.from(keys).sort();
+    const runs: CellRange[] = [];
+    let start = 0;
+    for (let end = 1; end <= sorted.length; end++) {
+      const isNext = sorted[end] === sorted[end - 1] + 1 && sorted[end] % maximumRowCount !== 0;
+      if (isNext) continue;
+      const column = Math.floor(sorted[start] / maximumRowCount);
+      const top = sorted[start] % maximumRowCount;
+      runs.push({ sheet, top, left: column, bottom: top + end - 1 - start, right: column });
+      start = end;
+    }
+    return runs;
+  });
 }

@@ -17,6 +17,8 @@ export interface ReadCells {
 }
 
 const generalFormat = 'General';
+/** Characters of a number with all its figures. */
+const longestNumber = 18;
 
 export class ExcelSheet implements SheetSnapshot {
   readonly rowCount: number;
@@ -29,6 +31,9 @@ export class ExcelSheet implements SheetSnapshot {
   private readonly values: (CellValue | undefined)[] = [];
   private readonly formulas: (string | undefined)[] = [];
   private readonly formats: string[] = [];
+  /** Characters of all entries, numbers counted at their longest: what the sheet comes to as a message. */
+  entryLength = 0;
+
   /** By position in the used rectangle, of the first cell that an array formula fills. */
   private readonly arrayRanges = new Map<number, CellRange>();
   private readonly hiddenRows = new Set<number>();
@@ -55,6 +60,7 @@ export class ExcelSheet implements SheetSnapshot {
         const formula = formulaOf(read.formulas[down][across], raw);
         this.formulas[at] = formula;
         this.values[at] = valueOf(raw, read.valueTypes[down][across], formula !== undefined);
+        this.entryLength += formula?.length ?? (typeof raw === 'string' ? raw.length : longestNumber);
         const format = read.numberFormats[down][across];
         this.formats[at] = typeof format === 'string' && format !== '' ? format : generalFormat;
       }
@@ -70,6 +76,11 @@ export class ExcelSheet implements SheetSnapshot {
       }
     }
     this.arrayRanges.set(this.position(range.top, range.left), range);
+  }
+
+  /** What array formulas fill. */
+  get arrays(): readonly CellRange[] {
+    return [...this.arrayRanges.values()];
   }
 
   hideRow(row: number): void {
@@ -135,6 +146,16 @@ export class ExcelSheet implements SheetSnapshot {
     const used = this.used!;
     return (row - used.top) * columnCountOf(used) + (column - used.left);
   }
+}
+
+/** What array formulas fill on a sheet, however it was read. */
+export function arrayRangesOf(sheet: SheetSnapshot): readonly CellRange[] {
+  if (sheet instanceof ExcelSheet) return sheet.arrays;
+  const found: CellRange[] = [];
+  sheet.forEachCell((_row, _column, { arrayRange }) => {
+    if (arrayRange !== undefined) found.push(arrayRange);
+  });
+  return found;
 }
 
 /** A text that begins with `=` is no formula: its value is the same text. */

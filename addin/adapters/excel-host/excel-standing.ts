@@ -4,8 +4,8 @@
  * is still as it was, what is as it should be, and what somebody else has changed since, which is left alone.
  */
 import { recordNamespace } from '../../domain/results-to-sheet/record-text';
-import { formatCellAddress } from '../../domain/sheet/cell-address';
 import type { CellRange } from '../../domain/sheet/cell-range';
+import { CellMap } from './cell-map';
 import type { OpenBatch } from './excel-batch';
 import { RangeQueue } from './excel-chunking';
 import { contentProperties, contentsOf } from './excel-contents';
@@ -54,7 +54,7 @@ export async function workLeft(batch: OpenBatch, journal: Journal, direction: Di
 
   const wanted = direction === 'forward' ? 'back' : 'forward';
   const cells = journal.cells.filter((change) => {
-    const standing = standings.get(formatCellAddress(change.cell));
+    const standing = standings.get(change.cell);
     return standing === wanted || (standing === 'both' && changesLooks(change));
   });
   const isThere = (name: string): boolean =>
@@ -63,7 +63,7 @@ export async function workLeft(batch: OpenBatch, journal: Journal, direction: Di
   // A sheet of ours is deleted again only where nobody has put anything on it since.
   const ours = addedSheets.filter(({ name, worksheet, used }) => {
     const own = journal.cells.filter(({ cell }) => cell.sheet === name);
-    const isUntouched = own.every(({ cell }) => standings.get(formatCellAddress(cell)) !== 'other');
+    const isUntouched = own.every(({ cell }) => standings.get(cell) !== 'other');
     return (
       !worksheet.isNullObject && isUntouched && (used.isNullObject || used.cellCount <= boundingCount(own))
     );
@@ -104,9 +104,8 @@ type Standing = ReturnType<typeof standingOf>;
 
 /** Reads the cells of a journal again, in as many round trips as they need. */
 class PresentCells {
-  /** By formatCellAddress. */
-  readonly standings = new Map<string, Standing>();
-  private readonly byCell: ReadonlyMap<string, CellChange>;
+  readonly standings = new CellMap<Standing>();
+  private readonly byCell: CellMap<CellChange>;
   private readonly queue: RangeQueue;
   private asked: readonly {
     readonly range: CellRange;
@@ -142,13 +141,12 @@ class PresentCells {
       if (worksheet.isNullObject) {
         // Of a sheet that is not there yet, nothing is done; of one that is gone, nothing can be.
         for (const { cell } of changesIn(this.changes, range)) {
-          this.standings.set(formatCellAddress(cell), 'back');
+          this.standings.set(cell, 'back');
         }
         continue;
       }
       for (const { cell, content } of contentsOf(range, loaded)) {
-        const at = formatCellAddress(cell);
-        this.standings.set(at, standingOf(this.byCell.get(at)!, content));
+        this.standings.set(cell, standingOf(this.byCell.get(cell)!, content));
       }
     }
   }

@@ -3,8 +3,8 @@
  * Carries a journal out, forward or back, and reads again what was written. In one round trip as a rule; more only
  * where the entries do not go into one message.
  */
-import { formatCellAddress } from '../../domain/sheet/cell-address';
 import { cellCountOf, cellsOf, columnCountOf, type CellRange } from '../../domain/sheet/cell-range';
+import type { CellMap } from './cell-map';
 import type { OpenBatch } from './excel-batch';
 import { messageTarget, RangeQueue } from './excel-chunking';
 import { contentProperties, contentsOf } from './excel-contents';
@@ -50,14 +50,13 @@ export async function carryOut(
 ): Promise<readonly CellChange[]> {
   const { context } = batch;
   const changes = changesByCell(work.cells);
+  await batch.pause();
   const { application } = context.workbook;
   // Rather slow and whole than quick and piecemeal: nothing is drawn or calculated until all of it is there.
   application.suspendScreenUpdatingUntilNextSync();
   writeStructure(context, work, direction);
-  const queue = new RangeQueue(
-    rectanglesOf(work.cells.map(({ cell }) => cell)),
-    bytesPerCell(work.cells, direction),
-  );
+  const rectangles = rectanglesOf(work.cells.map(({ cell }) => cell));
+  const queue = new RangeQueue(rectangles, bytesPerCell(work.cells, rectangles.length, direction));
   const failed: CellChange[] = [];
   do {
     application.suspendApiCalculationUntilNextSync();
@@ -67,10 +66,12 @@ export async function carryOut(
     if (queue.isEmpty && work.calculatesByHand) {
       application.calculate(Excel.CalculationType.recalculate);
     }
+    await batch.pause();
     await batch.sync();
+    await batch.pause();
     for (const { range, loaded } of written) {
       for (const { cell, content } of contentsOf(range, loaded)) {
-        const change = changes.get(formatCellAddress(cell))!;
+        const change = changes.get(cell)!;
         if (!holds(content, direction === 'forward' ? change.after : change.before)) failed.push(change);
       }
     }
@@ -122,12 +123,12 @@ function writeName(workbook: Excel.Workbook, change: NameChange, direction: Dire
 function writeRange(
   context: Excel.RequestContext,
   range: CellRange,
-  changes: ReadonlyMap<string, CellChange>,
+  changes: CellMap<CellChange>,
   direction: Direction,
 ): Excel.Range {
   const target = rangeOn(context, range);
   const isForward = direction === 'forward';
-  const ofRange = cellsOf(range).map((cell) => changes.get(formatCellAddress(cell))!);
+  const ofRange = cellsOf(range).map((cell) => changes.get(cell)!);
   const inRows = <T>(value: (change: CellChange) => T): T[][] => {
     const columns = columnCountOf(range);
     return Array.from({ length: cellCountOf(range) / columns }, (_, row) =>
@@ -155,8 +156,7 @@ function entryOfChange(change: CellChange, direction: Direction): Entry {
 }
 
 /** What a cell takes of the message there, or of the answer, which tells its value, its formula and its kind. */
-function bytesPerCell(changes: readonly CellChange[], direction: Direction): number {
-  const rectangles = rectanglesOf(changes.map(({ cell }) => cell)).length;
+function bytesPerCell(changes: readonly CellChange[], rectangles: number, direction: Direction): number {
   const bytes = changes.reduce((sum, change) => {
     const { formatBefore, formatAfter } = change;
     const entry = String(entryOfChange(change, direction)).length;

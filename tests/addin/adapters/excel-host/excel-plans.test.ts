@@ -14,6 +14,8 @@ import { buildXlsx, type XlsxDescription } from '../../../support/xlsx-builder';
 import { cellFacts, openDescribed, openInExcel } from './open-in-excel';
 import { largePlan } from './large-plan';
 
+jest.setTimeout(120_000);
+
 const today = 46_000;
 const solver = new InlineSolver({ now: () => 0, pause: () => Promise.resolve() });
 

@@ -11,6 +11,8 @@ import { largePlan } from './large-plan';
 const messageLimit = 5 * 1024 * 1024;
 const countedMessage = 4_000_000;
 
+jest.setTimeout(120_000);
+
 async function read(
   description: WorkbookDescription,
   options: Parameters<typeof openDescribed>[1] = {},

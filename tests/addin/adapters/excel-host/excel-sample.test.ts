@@ -8,6 +8,8 @@ import { solveModel, type SolvedModel } from '../../../../addin/use-cases/solve-
 import { resultTexts } from '../../../../addin/wording/report-wording';
 import { cellFacts, openInExcel, openSampleFile } from './open-in-excel';
 
+jest.setTimeout(120_000);
+
 const today = 46_000;
 
 async function solve(workbook: Workbook): Promise<SolvedModel> {

@@ -10,6 +10,8 @@ import type { OfficeHost } from '../../../office-host/office-host';
 import { stateOf } from '../../../office-host/host-state';
 import { at, openDescribed, refusalOf } from './open-in-excel';
 
+jest.setTimeout(120_000);
+
 const week: WorkbookDescription = {
   sheets: {
     Plan: {

@@ -23,6 +23,7 @@ export interface OpenInExcel {
 /** No answer is waited for longer than it takes the far end to fall silent. */
 export const impatient: ExcelTiming = {
   secondsToWait: 60,
+  pause: () => Promise.resolve(),
   startTimer: (_seconds, callback) => {
     // The far end answers in a microtask, so whatever has not come after a turn of the loop never comes.
     const timer = setImmediate(() => setImmediate(callback));
