@@ -60,7 +60,7 @@ const manifestFor = (origin, variant) => (content) => {
 };
 
 /** The static folder that a firm puts on its server: pages, scripts, icons and manifests. */
-const paneBuild = (mode) => ({
+const paneBuild = (mode, server) => ({
   ...shared,
   name: 'pane',
   mode,
@@ -96,14 +96,30 @@ const paneBuild = (mode) => ({
     }),
   ],
   devServer: {
+    server,
+    // Pages are loaded anew: exchanging parts while they run would need eval, which their policy forbids.
+    hot: false,
     port: Number(new URL(settings.development.origin).port),
     headers: { 'Access-Control-Allow-Origin': '*' },
     client: { overlay: false },
   },
 });
 
-export default (_env, argv) => {
+/**
+ * An add-in's page is shown only over https, with a certificate that the machine trusts. `npm run dev` makes one and
+ * asks once whether to trust it; `npm run dev -- --env selfSigned` asks nothing, for a browser that may complain.
+ */
+const developmentServer = async (env) => {
+  if (env.WEBPACK_SERVE !== true || env.selfSigned === true) {
+    return { type: 'https' };
+  }
+  const { getHttpsServerOptions } = await import('office-addin-dev-certs');
+  return { type: 'https', options: await getHttpsServerOptions() };
+};
+
+export default async (env = {}, argv = {}) => {
   const mode = argv.mode ?? 'production';
+  const server = await developmentServer(env);
   return [
     {
       ...shared,
@@ -129,6 +145,6 @@ export default (_env, argv) => {
         new webpack.optimize.LimitChunkCountPlugin({ maxChunks: 1 }),
       ],
     },
-    paneBuild(mode),
+    paneBuild(mode, server),
   ];
 };

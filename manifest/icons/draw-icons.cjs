@@ -8,8 +8,8 @@ const { crc32, deflateSync } = require('node:zlib');
 const { writeFileSync } = require('node:fs');
 const path = require('node:path');
 
-/** Pixels a side: 16, 32 and 80 for the ribbon, 32 and 64 for lists of add-ins. */
-const sizes = [16, 32, 64, 80];
+/** Pixels a side: 16, 32 and 80 for the ribbon, 32 and 64 for lists of add-ins, 128 for a page in a store. */
+const sizes = [16, 32, 64, 80, 128];
 const samplesPerSide = 8;
 
 const tile = [31, 58, 77];

@@ -4,12 +4,14 @@
  * and texts are from memory.
  */
 import { execFileSync } from 'node:child_process';
-import { mkdtempSync, readdirSync, readFileSync, rmSync } from 'node:fs';
+import { existsSync, mkdtempSync, readdirSync, readFileSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { inflateSync } from 'node:zlib';
 import { OfficeAddinManifest } from 'office-addin-manifest';
 import { SaxesParser } from 'saxes';
+import { requiredExcelApi } from '../../addin/adapters/excel-host/excel-requirements';
+import { startCommandOf } from '../../addin/pane/start-command';
 import { checkoutFolder } from '../support/needs';
 
 // What the reader needs only for manifests in JSON, or to change one: ES modules, which jest's loader cannot take.
@@ -130,7 +132,8 @@ describe('manifest.xml', () => {
     expect(textOf('Version')).toBe(`${version}.0`);
   });
 
-  it('asks for ExcelApi 1.9, for the pane and for the button alike', () => {
+  it('asks for the ExcelApi that the code asks for, for the pane and for the buttons alike', () => {
+    expect(requiredExcelApi).toBe('1.9');
     const sets = [...named('Set'), ...named('bt:Set')].map((set) => set.attributes);
     expect(sets).toEqual([
       { Name: 'ExcelApi', MinVersion: '1.9' },
@@ -177,6 +180,95 @@ describe('manifest.xml', () => {
   });
 });
 
+describe('the buttons', () => {
+  const controls = named('ov:Control');
+  const urlOf = (resid: string): URL => {
+    const found = named('bt:Url').find((url) => url.attributes.id === resid);
+    return new URL(found!.attributes.DefaultValue);
+  };
+  const actionOf = (control: Element): Element => control.children.find(({ name }) => name === 'ov:Action')!;
+  const within = (element: Element, name: string): Element =>
+    element.children.find((child) => child.name === name)!;
+
+  it('have ids of their own, and all open the one pane', () => {
+    expect(controls.map(({ attributes }) => attributes.id)).toEqual([
+      'Planrow.OpenPane',
+      'Planrow.Solve',
+      'Planrow.PutBack',
+      'Planrow.OpenFromCell',
+    ]);
+    for (const control of controls) {
+      expect(actionOf(control).attributes['xsi:type']).toBe('ShowTaskpane');
+      expect(within(actionOf(control), 'ov:TaskpaneId').text).toBe('Planrow.Pane');
+    }
+  });
+
+  it('each open the pane with a command that it knows', () => {
+    const commands = controls.map((control) => {
+      const { pathname, search } = urlOf(within(actionOf(control), 'ov:SourceLocation').attributes.resid);
+      return [pathname, startCommandOf(search)];
+    });
+    expect(commands).toEqual([
+      ['/pane.html', 'open'],
+      ['/pane.html', 'solve'],
+      ['/pane.html', 'put-back'],
+      ['/pane.html', 'open'],
+    ]);
+  });
+
+  it('have their parts in the order of the reference', () => {
+    for (const control of controls) {
+      expect(control.children.map(({ name }) => name)).toEqual([
+        'ov:Label',
+        'ov:Supertip',
+        'ov:Icon',
+        'ov:Action',
+      ]);
+    }
+  });
+
+  it('stand in the ribbon and in the menu of a cell', () => {
+    expect(named('ov:ExtensionPoint').map(({ attributes }) => attributes['xsi:type'])).toEqual([
+      'PrimaryCommandSurface',
+      'ContextMenu',
+    ]);
+    expect(named('ov:OfficeMenu')[0].attributes.id).toBe('ContextMenuCell');
+  });
+});
+
+describe('the manifests that are built', () => {
+  const built = (file: string): string =>
+    readFileSync(path.join(checkoutFolder, 'dist', 'pane', file), 'utf8');
+  const settings = JSON.parse(readFileSync(path.join(manifestFolder, 'settings.json'), 'utf8')) as {
+    manifestOrigin: string;
+    id: string;
+    productionOrigin: string;
+    development: { origin: string; id: string; name: string };
+  };
+  const committed = readFileSync(manifestPath, 'utf8');
+
+  it('differ from the committed one in origin alone, the one for development also in id and name', () => {
+    const { development } = settings;
+    const origin = process.env.PLANROW_ORIGIN ?? settings.productionOrigin;
+    expect(built('manifest.xml').replaceAll(origin, settings.manifestOrigin)).toBe(committed);
+    expect(built('manifest.xml')).not.toContain('localhost');
+    expect(
+      built('manifest-development.xml')
+        .replaceAll(development.origin, settings.manifestOrigin)
+        .replace(development.id, settings.id)
+        .replace(development.name, 'Planrow'),
+    ).toBe(committed);
+    expect(built('manifest-development.xml')).toContain(development.id);
+  });
+
+  it('name only files that stand in the same folder', () => {
+    const missing = urls
+      .map((url) => new URL(url).pathname)
+      .filter((file) => file !== '/' && !existsSync(path.join(checkoutFolder, 'dist', 'pane', file)));
+    expect(missing).toEqual([]);
+  });
+});
+
 describe('the icons', () => {
   it('exist in the sizes that the manifest asks for, square and of their true size', () => {
     const files = new Set(urls.filter((url) => url.includes('/icons/')).map((url) => path.basename(url)));
@@ -186,6 +278,10 @@ describe('the icons', () => {
       const { width, height } = readPng(path.join(manifestFolder, 'icons', file));
       expect({ file, width, height }).toEqual({ file, width: size, height: size });
     }
+    expect(readPng(path.join(manifestFolder, 'icons', 'icon-128.png'))).toMatchObject({
+      width: 128,
+      height: 128,
+    });
   });
 
   it('are shown by the ribbon in the size that their id promises', () => {
