@@ -38,12 +38,11 @@ export class DualRatioTest {
    * @returns entering variable, or −1: with every breakpoint passed the row stays infeasible
    */
   choose(row: ScatteredVector, sign: number, infeasibility: number, primalTolerance: number): number {
-    for (const pivotTolerance of [tolerances.ratioTestPivot, tolerances.ratioTestLastPivot]) {
-      this.collectBreakpoints(row, sign, pivotTolerance);
-      const entering = this.passBreakpoints(row, infeasibility, primalTolerance);
-      if (entering >= 0) return entering;
-    }
-    return -1;
+    this.collectBreakpoints(row, sign, tolerances.ratioTestPivot);
+    const entering = this.passBreakpoints(row, infeasibility, primalTolerance);
+    if (entering >= 0) return entering;
+    this.collectBreakpoints(row, sign, tolerances.ratioTestLastPivot);
+    return this.passBreakpoints(row, infeasibility, primalTolerance);
   }
 
   private passBreakpoints(row: ScatteredVector, infeasibility: number, primalTolerance: number): number {

@@ -41,11 +41,16 @@ export class PrimalRatioTest {
     usesFirstBound: boolean,
   ): PrimalRatioOutcome {
     const slack = usesFirstBound ? 0 : feasibilityTolerance;
-    for (const pivotTolerance of [tolerances.ratioTestPivot, tolerances.ratioTestLastPivot]) {
-      const outcome = this.firstBound(entering, column, direction, slack, usesFirstBound, pivotTolerance);
-      if (outcome !== 'unbounded') return outcome;
-    }
-    return 'unbounded';
+    const outcome = this.firstBound(
+      entering,
+      column,
+      direction,
+      slack,
+      usesFirstBound,
+      tolerances.ratioTestPivot,
+    );
+    if (outcome !== 'unbounded') return outcome;
+    return this.firstBound(entering, column, direction, slack, usesFirstBound, tolerances.ratioTestLastPivot);
   }
 
   private firstBound(
