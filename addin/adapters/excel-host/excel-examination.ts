@@ -4,42 +4,19 @@
  * us, and whether the workbook is still what the plan was made from. Nothing is touched; what comes out is the journal
  * of the write.
  */
-import { cellKey, formatCellAddress, type CellAddress } from '../../domain/sheet/cell-address';
-import {
-  cellCountOf,
-  cellsOf,
-  containsCell,
-  rangesOverlap,
-  type CellRange,
-} from '../../domain/sheet/cell-range';
-import { findSheet, type WorkbookSnapshot } from '../../domain/sheet/sheet-snapshot';
+import type { WorkbookSnapshot } from '../../domain/sheet/sheet-snapshot';
 import { recordNamespace } from '../../domain/results-to-sheet/record-text';
-import { nothingWritten, type CellEdit, type PlannedEdits } from '../../ports/planned-edits';
+import type { PlannedEdits } from '../../ports/planned-edits';
 import { WorkbookError } from '../../ports/workbook';
-import { CellMap } from './cell-map';
 import type { OpenBatch } from './excel-batch';
-import { firstGuess, messageTarget, RangeQueue } from './excel-chunking';
+import { firstGuess, messageTarget } from './excel-chunking';
 import { isAnswerTooLarge } from './excel-errors';
-import { changedMeanwhile, Fingerprint } from './excel-fingerprint';
-import { contentsOf } from './excel-contents';
-import { textFormat } from './excel-entry';
-import {
-  holds,
-  type CellChange,
-  type CellContent,
-  type Journal,
-  type NameChange,
-  type WidthChange,
-} from './excel-journal';
-import { listRanges, rangesOfAddress } from './excel-ranges';
-import { rectanglesOf } from './excel-rectangles';
+import { Fingerprint } from './excel-fingerprint';
+import type { Journal, NameChange, WidthChange } from './excel-journal';
 import { xmlOfRecord } from './excel-record';
-import { arrayRangesOf } from './excel-sheet';
 import type { ExcelAbilities } from './excel-requirements';
 import { pointsOfCharacters } from './excel-widths';
-
-/** How the workbook is called in sentences. */
-const theWorkbook = 'the workbook';
+import { refusal, WriteTargets } from './write-targets';
 
 export interface Examined {
   readonly journal: Journal;
@@ -65,7 +42,7 @@ export async function examine(
       const fingerprint = basis === undefined ? undefined : new Fingerprint(batch.context, basis);
       let isDone: boolean;
       do {
-        const room = messageTarget - examination.requestTargets();
+        const room = messageTarget - examination.targets.request();
         fingerprint?.request(room);
         await batch.sync();
         await batch.pause();
@@ -73,7 +50,7 @@ export async function examine(
         await batch.pause();
         fingerprint?.compare();
         await batch.pause();
-        isDone = examination.isDone && fingerprint?.isDone !== false;
+        isDone = examination.targets.isDone && fingerprint?.isDone !== false;
       } while (!isDone);
       return { journal: examination.journal(), recordPartId: examination.recordPartId };
     } catch (error) {
@@ -88,15 +65,6 @@ interface TargetSheet {
   readonly tables: Excel.TableCollection;
 }
 
-interface LoadedTarget {
-  readonly range: CellRange;
-  readonly loaded: Excel.Range;
-}
-
-interface Target extends LoadedTarget {
-  readonly merged: Excel.RangeAreas | undefined;
-}
-
 interface TargetName {
   readonly name: string;
   readonly scope: string | null;
@@ -109,32 +77,23 @@ class Examination {
   private readonly protection: Excel.WorkbookProtection;
   private readonly sheets: readonly TargetSheet[];
   private readonly addedSheets: readonly Excel.Worksheet[];
-  /** Cells that get a value or a formula, on sheets that are there: those asked for so far. */
-  private readonly targets: Target[] = [];
-  /** Of these, the ones that the last round trip was about. */
-  private newTargets: readonly Target[] = [];
-  private readonly waiting: RangeQueue;
-  /** Cells that must hold a formula, because their stored value is to be renewed. */
-  private readonly formulaCells: readonly LoadedTarget[];
-  private readonly formatSources: readonly LoadedTarget[];
-  private readonly wrapped: readonly { readonly range: CellRange; readonly format: Excel.RangeFormat }[];
+  readonly targets: WriteTargets;
   private readonly widths: readonly {
     readonly sheet: string;
     readonly column: number;
     readonly format: Excel.RangeFormat;
   }[];
   private readonly names: readonly TargetName[];
-  private readonly arrays = new Map<string, readonly CellRange[]>();
   private readonly recordXml: OfficeExtension.ClientResult<string> | undefined;
   private readonly recordPart: Excel.CustomXmlPart | undefined;
 
   /** Everything is asked for here, and read after the round trip. */
   constructor(
-    private readonly context: Excel.RequestContext,
+    context: Excel.RequestContext,
     private readonly edits: PlannedEdits,
-    private readonly abilities: ExcelAbilities,
-    private readonly basis: WorkbookSnapshot | undefined,
-    private readonly bytesPerCell: number,
+    abilities: ExcelAbilities,
+    basis: WorkbookSnapshot | undefined,
+    bytesPerCell: number,
   ) {
     const { workbook } = context;
     this.application = workbook.application.load('calculationMode');
@@ -154,42 +113,11 @@ class Examination {
     this.addedSheets = edits.addedSheets.map((name) =>
       workbook.worksheets.getItemOrNullObject(name).load('name'),
     );
-    const cells = present.flatMap(([sheet, { cells: ofSheet }]) =>
-      [...ofSheet.values()].map((edit) => ({ ...edit, cell: { ...edit.cell, sheet } })),
-    );
-    const isStored = ({ content }: CellEdit): boolean => content.kind === 'storedValue';
-    const written = cells.filter((edit) => !isStored(edit));
-    this.waiting = new RangeQueue(rectanglesOf(written.map(({ cell }) => cell)), bytesPerCell);
-    this.formulaCells = this.requestRanges(
-      cells.filter(isStored).map(({ cell }) => cell),
-      `formulas${this.arrayProperties}`,
-    );
-    const sources: CellAddress[] = [];
-    const known = new CellMap<true>();
-    for (const { cells: ofSheet } of edits.sheets.values()) {
-      for (const { numberFormatOf: source } of ofSheet.values()) {
-        if (source === undefined || isAdded(source.sheet) || known.get(source) === true) continue;
-        known.set(source, true);
-        sources.push(source);
-      }
-    }
-    this.formatSources = this.requestRanges(sources, 'numberFormat');
-    this.wrapped = written
-      .filter(({ wrapsText }) => wrapsText)
-      .map(({ cell }) => {
-        const range = {
-          sheet: cell.sheet,
-          top: cell.row,
-          left: cell.column,
-          bottom: cell.row,
-          right: cell.column,
-        };
-        return { range, format: this.rangeOf(range).format.load('wrapText') };
-      });
+    this.targets = new WriteTargets(context, edits, abilities, basis, bytesPerCell);
     this.widths = present.flatMap(([sheet, { widths }]) =>
       [...widths.keys()].map((column) => {
-        const range = { sheet, top: 0, left: column, bottom: 0, right: column };
-        return { sheet, column, format: this.rangeOf(range).format.load('columnWidth') };
+        const inColumn = workbook.worksheets.getItemOrNullObject(sheet).getRangeByIndexes(0, column, 1, 1);
+        return { sheet, column, format: inColumn.format.load('columnWidth') };
       }),
     );
     const seen = new Set<string>();
@@ -211,29 +139,6 @@ class Examination {
         .load('id');
       this.recordXml = this.recordPart.getXml();
     }
-  }
-
-  get isDone(): boolean {
-    return this.waiting.isEmpty;
-  }
-
-  /** Asks for the cells that are to be written, as many as one message has room for. @returns their bytes, about */
-  requestTargets(): number {
-    const properties = `values,formulas,valueTypes,numberFormat,rowHidden${this.arrayProperties}`;
-    const parts = this.waiting.take();
-    this.newTargets = parts.map((range) => {
-      const loaded = this.rangeOf(range).load(properties);
-      const merged = this.abilities.findsMergedCells
-        ? loaded.getMergedAreasOrNullObject().load('address')
-        : undefined;
-      return { range, loaded, merged };
-    });
-    this.targets.push(...this.newTargets);
-    return parts.reduce((sum, range) => sum + cellCountOf(range) * this.bytesPerCell, 0);
-  }
-
-  private get arrayProperties(): string {
-    return this.abilities.findsArrays ? ',hasSpill,savedAsArray' : '';
   }
 
   /** @throws WorkbookError for what Excel would not do, or what must not be done */
@@ -263,72 +168,14 @@ class Examination {
       );
     }
     this.refuseFiltered();
-    this.refuseChanged();
-    this.newTargets.forEach((target) => this.refuseOverwriting(target));
-    for (const { range, loaded } of this.formulaCells) {
-      const isFilled = this.filledIn({ range, loaded });
-      loaded.formulas.forEach((row, down) =>
-        row.forEach((formula: unknown, across) => {
-          const cell = { sheet: range.sheet, row: range.top + down, column: range.left + across };
-          if (!(typeof formula === 'string' && formula.startsWith('=')) && !isFilled(cell)) {
-            const why = `${formatCellAddress(cell)} holds no formula whose value could be renewed`;
-            throw refusal('write-failed', why);
-          }
-        }),
-      );
-    }
+    this.targets.refuseChanged();
+    this.targets.refuseOverwriting();
+    this.targets.refuseWithoutFormula();
   }
 
   journal(): Journal {
-    const formatOfSource = new CellMap<string>();
-    for (const { range, loaded } of this.formatSources) {
-      const { numberFormat } = loaded;
-      for (const cell of cellsOf(range)) {
-        const format: unknown = numberFormat[cell.row - range.top][cell.column - range.left];
-        formatOfSource.set(cell, String(format));
-      }
-    }
-    const wrapsBefore = new CellMap<boolean>();
-    for (const { range, format } of this.wrapped) {
-      wrapsBefore.set(firstCell(range), format.wrapText);
-    }
-    const changeOf = (cell: CellAddress, edit: CellEdit, before: CellContent, format: string): CellChange => {
-      const after = contentAfter(edit);
-      const source = edit.numberFormatOf;
-      const wanted = (source && formatOfSource.get(source)) ?? format;
-      return {
-        cell,
-        before,
-        after,
-        formatBefore: format,
-        // A number that is written into a cell for texts would become a text.
-        formatAfter: wanted === textFormat && typeof after.value !== 'string' ? 'General' : wanted,
-        wrapsBefore: edit.wrapsText ? (wrapsBefore.get(cell) ?? false) : undefined,
-        wrapsAfter: edit.wrapsText ? true : undefined,
-      };
-    };
-    const cells: CellChange[] = [];
-    for (const { range, loaded } of this.targets) {
-      const ofSheet = this.edits.sheets.get(range.sheet)!.cells;
-      const { numberFormat } = loaded;
-      for (const { cell, content } of contentsOf(range, loaded)) {
-        const format: unknown = numberFormat[cell.row - range.top][cell.column - range.left];
-        cells.push(changeOf(cell, ofSheet.get(cellKey(cell.row, cell.column))!, content, String(format)));
-      }
-    }
-    for (const name of this.edits.addedSheets) {
-      for (const edit of this.edits.sheets.get(name)!.cells.values()) {
-        if (edit.content.kind === 'storedValue') {
-          throw refusal(
-            'write-failed',
-            `${formatCellAddress(edit.cell)} holds no formula whose value could be renewed`,
-          );
-        }
-        cells.push(changeOf({ ...edit.cell, sheet: name }, edit, nothing, 'General'));
-      }
-    }
     return {
-      cells,
+      cells: this.targets.changes(),
       widths: this.widthChanges(),
       names: this.nameChanges(),
       record: this.edits.record === undefined ? undefined : this.recordChange(this.edits.record),
@@ -378,121 +225,28 @@ class Examination {
     });
   }
 
-  private recordChange(json: string): { before: string | null; after: string } {
-    const isThere = this.recordPart?.isNullObject === false;
-    return { before: isThere ? this.recordXml!.value : null, after: xmlOfRecord(json) };
-  }
-
   /** Values written under a filter land in other rows than they are meant for. */
   private refuseFiltered(): void {
-    const sheets = this.sheets
+    const filtered = this.sheets
       .filter(
         ({ worksheet, tables }) =>
           worksheet.autoFilter.isDataFiltered ||
           tables.items.some((table) => table.autoFilter.isDataFiltered),
       )
       .map(({ name }) => name);
-    const hidden = this.targets.filter(
-      ({ range, loaded }) => sheets.includes(range.sheet) && loaded.rowHidden !== false,
-    );
+    const hidden = this.targets.hiddenOn(filtered);
     if (hidden.length > 0) {
-      const filtered = sheets.filter((name) => hidden.some(({ range }) => range.sheet === name));
+      const sheets = filtered.filter((name) => hidden.some(({ sheet }) => sheet === name));
       throw new WorkbookError(
         'filtered',
-        `A filter on the sheet ${filtered.join(', ')} hides rows in which results stand, so nothing was written. Clear the filter and write again.`,
-        { sheets: filtered, ranges: hidden.map(({ range }) => range), canRetry: true },
+        `A filter on the sheet ${sheets.join(', ')} hides rows in which results stand, so nothing was written. Clear the filter and write again.`,
+        { sheets, ranges: hidden, canRetry: true },
       );
     }
   }
 
-  /** Somebody has put something else there since the workbook was read. */
-  private refuseChanged(): void {
-    if (this.basis === undefined) return;
-    const changed = this.newTargets.flatMap(({ range, loaded }) => {
-      const sheet = findSheet(this.basis!, range.sheet);
-      if (sheet === undefined) return [];
-      const isFilled = this.filledIn({ range, loaded });
-      return contentsOf(range, loaded).filter(({ cell, content }) => {
-        const { value = null, formula } = sheet.cell(cell.row, cell.column) ?? {};
-        return !isFilled(cell) && !holds(content, { value, formula });
-      });
-    });
-    if (changed.length > 0) {
-      const ranges = rectanglesOf(changed.map(({ cell }) => cell));
-      throw changedMeanwhile(listRanges(ranges), ranges);
-    }
+  private recordChange(json: string): { before: string | null; after: string } {
+    const isThere = this.recordPart?.isNullObject === false;
+    return { before: isThere ? this.recordXml!.value : null, after: xmlOfRecord(json) };
   }
-
-  private refuseOverwriting(target: Target): void {
-    const { range, loaded, merged } = target;
-    const covered =
-      merged === undefined || merged.isNullObject ? [] : rangesOfAddress(range.sheet, merged.address);
-    const isFilled = this.filledIn(target);
-    for (const { cell, content } of contentsOf(range, loaded)) {
-      const refuse = (what: string): never => {
-        throw refusal('would-overwrite', `${formatCellAddress(cell)} ${what}`);
-      };
-      if (content.formula !== undefined) refuse('holds a formula');
-      if (isFilled(cell)) refuse('is filled by an array formula');
-      const cover = covered.find((area) => containsCell(area, cell));
-      if (cover !== undefined && (cover.top !== cell.row || cover.left !== cell.column)) {
-        refuse('is covered by a merged cell');
-      }
-      const edit = this.edits.sheets.get(cell.sheet)!.cells.get(cellKey(cell.row, cell.column))!;
-      const isEmptied = edit.content.kind === 'formula' && edit.content.replacesValue;
-      if (edit.content.kind === 'formula' && !isEmptied && content.value !== null) {
-        refuse('already holds a value');
-      }
-    }
-  }
-
-  /**
-   * Which cells of a range an array formula fills: cell by cell as the workbook was read; where no array was known,
-   * Excel says it of the whole range.
-   */
-  private filledIn({ range, loaded }: LoadedTarget): (cell: CellAddress) => boolean {
-    const known = this.arraysOf(range.sheet).filter((array) => rangesOverlap(array, range));
-    if (known.length > 0) return (cell) => known.some((array) => containsCell(array, cell));
-    const isFilled =
-      this.abilities.findsArrays && (loaded.hasSpill !== false || loaded.savedAsArray !== false);
-    return () => isFilled;
-  }
-
-  /** What array formulas filled when the workbook was read. */
-  private arraysOf(sheetName: string): readonly CellRange[] {
-    let arrays = this.arrays.get(sheetName);
-    if (arrays === undefined) {
-      const sheet = this.basis?.sheets.find(({ name }) => name === sheetName);
-      arrays = sheet === undefined ? [] : arrayRangesOf(sheet);
-      this.arrays.set(sheetName, arrays);
-    }
-    return arrays;
-  }
-
-  private requestRanges(cells: readonly CellAddress[], properties: string): LoadedTarget[] {
-    return rectanglesOf(cells).map((range) => ({ range, loaded: this.rangeOf(range).load(properties) }));
-  }
-
-  /** On a sheet that may not be there. */
-  private rangeOf({ sheet, top, left, bottom, right }: CellRange): Excel.Range {
-    return this.context.workbook.worksheets
-      .getItemOrNullObject(sheet)
-      .getRangeByIndexes(top, left, bottom - top + 1, right - left + 1);
-  }
-}
-
-const nothing: CellContent = { value: null, formula: undefined };
-
-function contentAfter({ content }: CellEdit): CellContent {
-  return content.kind === 'formula'
-    ? { value: content.value ?? null, formula: content.formula }
-    : { value: content.value ?? null, formula: undefined };
-}
-
-function firstCell({ sheet, top, left }: CellRange): CellAddress {
-  return { sheet, row: top, column: left };
-}
-
-function refusal(code: 'would-overwrite' | 'write-failed', why: string): WorkbookError {
-  return new WorkbookError(code, nothingWritten(theWorkbook, why));
 }

@@ -46,7 +46,7 @@ async function brokenOff(fault: Fault = lasting): Promise<OpenInExcel> {
   return opened;
 }
 
-it('the cells that may be between are listed, and nothing else is written until the journal has ended', async () => {
+it('AD-106 the cells that may be between are listed, and nothing else is written until the journal has ended', async () => {
   const { host, workbook } = await brokenOff();
   expect(workbook.unfinished()).toEqual([
     { sheet: 'Plan', top: 4, left: 1, bottom: 5, right: 1 },
@@ -62,7 +62,7 @@ it('the cells that may be between are listed, and nothing else is written until 
   expect(host.value('Plan!H1')).toBe(1);
 });
 
-it('putting back leaves alone what somebody has changed since', async () => {
+it('AD-106 putting back leaves alone what somebody has changed since', async () => {
   const { host, workbook } = await brokenOff();
   host.type('Plan!B6', 50);
   await workbook.putBack();
@@ -70,7 +70,7 @@ it('putting back leaves alone what somebody has changed since', async () => {
   expect(workbook.unfinished()).toEqual([]);
 });
 
-it('finishing leaves alone what somebody has changed since', async () => {
+it('AD-106 finishing leaves alone what somebody has changed since', async () => {
   const { host, workbook } = await brokenOff({ ...lasting, when: 'before' });
   host.type('Plan!B6', 50);
   await workbook.finish();

@@ -58,7 +58,7 @@ it('values of every kind come as they are', async () => {
   expect(cells.map(({ isDate }) => isDate).indexOf(true)).toBe(4);
 });
 
-it('names that lead nowhere, to computed ranges or to several areas are read as text, and never resolved by Excel', async () => {
+it('AD-100 names that lead nowhere, to computed ranges or to several areas are read as text, and never resolved by Excel', async () => {
   const { host, read: snapshot } = await read({
     sheets: { Plan: { A1: 1 } },
     names: {
@@ -186,7 +186,7 @@ it('cells that stand far from the first ones are read in their place', async () 
   expect(host.traffic.roundTrips).toBe(3);
 });
 
-it('a plan of 3,000 decisions and 1,200 rows is read in the round trips of the design', async () => {
+it('AD-100 a plan of 3,000 decisions and 1,200 rows is read in the round trips of the design', async () => {
   const { host, read: snapshot } = await read(largePlan(3000, 1200, 30));
   const { roundTrips, responseBytes, largestMessage } = host.traffic;
   expect(roundTrips).toBeLessThanOrEqual(3 + Math.ceil(responseBytes / countedMessage));
@@ -218,7 +218,7 @@ it('an answer that comes out too large is asked for again in smaller pieces', as
   expect(host.traffic.largestMessage).toBeLessThan(messageLimit);
 });
 
-it('of a very large workbook, only sheets that the plans lead to are read', async () => {
+it('AD-101 of a very large workbook, only sheets that the plans lead to are read', async () => {
   const filled = (value: number): number[][] =>
     Array.from({ length: 50_000 }, () => [value, value, value, value]);
   const { host, read: snapshot } = await read({
@@ -260,7 +260,7 @@ it('a sheet that reaches far beyond its data is refused with its name', async ()
   expect(refusal.message).toContain('Plan reaches to XFD900');
 });
 
-it('an Excel that is older than we need is refused before anything is asked', async () => {
+it('AD-107 an Excel that is older than we need is refused before anything is asked', async () => {
   const { host, workbook } = openDescribed({ sheets: { Plan: { A1: 1 } } }, { requirementSet: '1.8' });
   host.resetTraffic();
   expect((await refusalOf(workbook.read())).code).toBe('host-too-old');

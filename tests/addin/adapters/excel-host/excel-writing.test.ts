@@ -38,7 +38,7 @@ const value = (text: string, written: number | string | boolean | null, sheet = 
   value: written,
 });
 
-describe('texts come back as the same texts', () => {
+describe('AD-102 texts come back as the same texts', () => {
   // What Excel would otherwise make of them: dates, numbers, formulas, truth values, errors, in some language.
   const texts = [
     'Wall tile',
@@ -145,7 +145,7 @@ it('a workbook that the planner calculates by hand is calculated, and stays so',
   expect(host.workbook.calculationMode).toBe('Manual');
 });
 
-describe('refused before anything is touched', () => {
+describe('AD-104 refused before anything is touched', () => {
   async function refused(
     description: WorkbookDescription,
     plan: WorkbookWrite[],
@@ -166,6 +166,36 @@ describe('refused before anything is touched', () => {
     const refusal = await refused({ ...week, protectedSheets: ['Plan'] }, plan);
     expect(refusal).toMatchObject({ code: 'protected-sheet', sheets: ['Plan'], canRetry: true });
     expect(refusal.message).toContain('Plan');
+  });
+
+  it('headings and totals of tables, cells of PivotTables, and cells that no sheet has', async () => {
+    const description: WorkbookDescription = {
+      sheets: {
+        Plan: {
+          A1: [
+            ['Tile', 'Amount'],
+            ['Wall', 4],
+            ['Total', 4],
+          ],
+        },
+      },
+      tables: [{ name: 'Tiles', sheet: 'Plan', ref: 'A1:B3', totalsRowCount: 1 }],
+      pivots: { Plan: ['E1:F5'] },
+    };
+    for (const [address, why] of [
+      ['A1', 'a heading or a total of the table Tiles'],
+      ['B3', 'a heading or a total of the table Tiles'],
+      ['E4', 'a PivotTable'],
+    ] as const) {
+      const refusal = await refused(description, [value(address, 'x')]);
+      expect(refusal.code).toBe('would-overwrite');
+      expect(refusal.message).toContain(why);
+    }
+    const nowhere = { kind: 'value', cell: { sheet: 'Plan', row: -1, column: 0 }, value: 1 } as const;
+    expect((await refused(description, [nowhere])).code).toBe('write-failed');
+    const { host, workbook } = openDescribed(description);
+    await workbook.apply([value('B2', 5)], await workbook.read());
+    expect(host.value('Plan!B2')).toBe(5);
   });
 
   it('a protected structure, where a sheet is to be added', async () => {
@@ -248,7 +278,7 @@ describe('refused before anything is touched', () => {
   });
 });
 
-describe('a workbook that was changed after it was read', () => {
+describe('AD-103 a workbook that was changed after it was read', () => {
   const plan = [value('B5', 1), value('B6', 3), value('F5', 1)];
 
   async function afterChange(change: (host: OfficeHost) => void): Promise<string> {
@@ -315,7 +345,7 @@ describe('a workbook that was changed after it was read', () => {
   });
 });
 
-it('what Excel does not keep is found out and put back: a merged cell that could not be seen', async () => {
+it('AD-105 what Excel does not keep is found out and put back: a merged cell that could not be seen', async () => {
   const { host, workbook } = openDescribed(
     { ...week, merged: { Plan: ['F5:F6'] } },
     { requirementSet: '1.9' },
