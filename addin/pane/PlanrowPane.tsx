@@ -14,6 +14,7 @@ import { paneTexts } from '../wording/pane-texts';
 import type { PaneProgram } from './pane-program';
 import type { PaneState } from './pane-state';
 import { usePaneStyles } from './views/pane-styles';
+import { PageLinks } from './views/PageLinks';
 import { FailureBar } from './views/FailureBar';
 import { PlanChooser } from './views/PlanChooser';
 import { ResultView } from './views/ResultView';
@@ -113,7 +114,12 @@ function MainView({ state, dispatch }: { state: PaneState; dispatch: Dispatch })
     );
   }
   if (chosen === null) {
-    return <p>{paneTexts.noPlanYet}</p>;
+    return (
+      <div className={styles.stack}>
+        <p>{paneTexts.noPlanYet}</p>
+        <PageLinks />
+      </div>
+    );
   }
   return view === 'statement' ? (
     <StatementView chosen={chosen} state={state} dispatch={dispatch} />

@@ -28,6 +28,7 @@ type Press =
   | { readonly kind: 'selection-wanted'; readonly part: PartKey }
   | { readonly kind: 'reference-typed'; readonly part: PartKey; readonly text: string }
   | { readonly kind: 'part-removed'; readonly part: PartKey }
+  | { readonly kind: 'extension-pressed'; readonly writes: WritePlan }
   | { readonly kind: 'sense-picked'; readonly sense: PlanSense }
   | { readonly kind: 'common-relation-picked'; readonly number: number; readonly relation: Relation }
   | { readonly kind: 'relation-picked'; readonly cell: CellAddress; readonly relation: Relation }

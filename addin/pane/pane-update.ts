@@ -48,6 +48,7 @@ export function updatePane(state: PaneState, event: PaneEvent): Updated {
     case 'selection-read':
     case 'reference-typed':
     case 'part-removed':
+    case 'extension-pressed':
     case 'sense-picked':
     case 'common-relation-picked':
     case 'relation-picked':

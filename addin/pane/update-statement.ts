@@ -33,6 +33,7 @@ export type StatementEvent = EventOf<
   | 'selection-read'
   | 'reference-typed'
   | 'part-removed'
+  | 'extension-pressed'
   | 'sense-picked'
   | 'common-relation-picked'
   | 'relation-picked'
@@ -76,6 +77,8 @@ export function updateStatement(state: PaneState, event: StatementEvent): Update
       const writes = removePart(workbook, plan, event.part.role, event.part.number);
       return writes.length === 0 ? only(closed) : writeStatement(closed, writes);
     }
+    case 'extension-pressed':
+      return writeStatement(state, event.writes);
     case 'sense-picked':
       return writeStatement(state, setSense(plan, event.sense));
     case 'common-relation-picked':

@@ -54,7 +54,18 @@ export function rangesText(ranges: readonly CellRange[]): string {
   return ranges.map(formatCellRange).join(', ');
 }
 
-/** What a field says that it read: `12 decision cells, Plan!F5:F16`. */
+/** What a field says of its part: what was read, and by which name. */
+export function fieldHint(
+  role: StatementRole,
+  part: { name: string; reading: PartReading } | undefined,
+): string {
+  if (part !== undefined) {
+    return `${readingText(role, part.reading)} (${part.name})`;
+  }
+  return role === 'Lower' || role === 'Upper' ? paneTexts.optional : paneTexts.notStated;
+}
+
+/** What a part's name was read as: `12 decision cells, Plan!F5:F16`. */
 export function readingText(role: StatementRole, reading: PartReading): string {
   switch (reading.kind) {
     case 'cells': {
@@ -155,16 +166,19 @@ export const paneTexts = {
   takeAway: 'Remove',
   takeAwayFor: (label: string): string => `Remove ${label} from the plan`,
   addAnother: (label: string): string => `Add ${label}`,
-  referenceOf: (label: string): string => `Cells of ${label}`,
   typedReferenceFault: 'These are no cells of this workbook. Type them like Plan!B2:B9.',
   set: 'Set',
   notStated: 'Not stated yet',
   optional: 'Optional. Blank: 0 below, none above.',
-  nameBehind: (name: string): string => `Name in the workbook: ${name}`,
   commonRelation: 'One relation for all rows',
   relationFromCells: 'from cells',
   constraintsTogether: 'rows in one block',
   constraintsApart: 'rows in parts',
+  addedRows: (block: string, range: CellRange): string => {
+    const count = range.bottom - range.top + 1;
+    return `${countText(count, 'row')} under ${block} look${count === 1 ? 's' : ''} like the rows above: ${formatCellRange(range)}.`;
+  },
+  extendNames: (names: readonly string[]): string => `Extend ${listText(names)}`,
   pointElsewhere: 'Point it at other cells?',
   pointFrom: (text: string): string => `Now: ${text}`,
   pointTo: (text: string): string => `Then: ${text}`,
@@ -271,9 +285,9 @@ export const paneTexts = {
       : `${countText(users.length, 'formula')} use${users.length === 1 ? 's' : ''} its names and will show #NAME?: ${listText(users.slice(0, 5))}${users.length > 5 ? ', …' : ''}.`,
   statementSaved: (label: string): string => `${label} set.`,
   choosePlanFirst: 'Several plans stand on this sheet. Choose one, then press Solve.',
+  pages: 'About Planrow',
   support: 'Help',
   privacy: 'Privacy',
-  sortedAscending: 'smallest first',
 } as const;
 
 /** How many rows are binding, in words. */

@@ -5,7 +5,7 @@
 import { Button, Field, Input } from '@fluentui/react-components';
 import { useEffect, useState, type FormEvent, type ReactNode } from 'react';
 import type { StatedPart } from '../../domain/statement-to-sheet/describe-plans';
-import { paneTexts, partLabel, partLabels, readingText } from '../../wording/pane-texts';
+import { fieldHint, paneTexts, partLabel, partLabels } from '../../wording/pane-texts';
 import { isSamePart, type PaneState, type PartKey, type Question } from '../pane-state';
 import type { Dispatch } from './dispatch';
 import { usePaneStyles } from './pane-styles';
@@ -24,7 +24,7 @@ export function PartField({ part, stated, isRemovable, state, dispatch }: Props)
   const isBusy = state.activity.kind !== 'idle';
   const { question } = state;
   const fault = faultText(state, part);
-  const hint = stated === undefined ? paneTexts.notStated : readingText(part.role, stated.reading);
+  const hint = fieldHint(part.role, stated);
   return (
     <div className={styles.tightStack}>
       <ReferenceForm

@@ -10,15 +10,17 @@ import {
   paneTexts,
   partLabel,
   partLabels,
-  readingText,
+  fieldHint,
   selectionText,
   senseTexts,
 } from '../../wording/pane-texts';
 import { isSamePart, type PaneState, type PartKey } from '../pane-state';
+import { AddedRowsNote } from './AddedRowsNote';
 import { ConstraintSets } from './ConstraintSets';
 import type { Dispatch } from './dispatch';
 import { IssueList } from './IssueList';
 import { usePaneStyles } from './pane-styles';
+import { PageLinks } from './PageLinks';
 import { PartField } from './PartField';
 
 interface Props {
@@ -33,6 +35,7 @@ export function StatementView({ chosen, state, dispatch }: Props): ReactNode {
     <div className={styles.stack}>
       <p className={`${styles.gloss} ${styles.breakable}`}>{selectionText(state.selected)}</p>
       {state.check !== null && <IssueList check={state.check} state={state} dispatch={dispatch} />}
+      <AddedRowsNote chosen={chosen} state={state} dispatch={dispatch} />
       <NumberedFields role="Decision" isNeeded chosen={chosen} state={state} dispatch={dispatch} />
       <SenseField chosen={chosen} state={state} dispatch={dispatch} />
       <NumberedFields role="Objective" isNeeded chosen={chosen} state={state} dispatch={dispatch} />
@@ -41,6 +44,7 @@ export function StatementView({ chosen, state, dispatch }: Props): ReactNode {
       <NumberedFields role="Upper" chosen={chosen} state={state} dispatch={dispatch} />
       <NumberedFields role="DecisionLabel" chosen={chosen} state={state} dispatch={dispatch} />
       <NumberedFields role="ConstraintLabel" chosen={chosen} state={state} dispatch={dispatch} />
+      <PageLinks />
     </div>
   );
 }
@@ -107,10 +111,7 @@ function SenseField({ chosen, state, dispatch }: Props): ReactNode {
   const isInCell = stated?.reading.kind === 'cells';
   return (
     <section className={styles.section} aria-label={label}>
-      <Field
-        label={`${label} (${gloss})`}
-        hint={stated === undefined ? paneTexts.notStated : readingText('Sense', stated.reading)}
-      >
+      <Field label={`${label} (${gloss})`} hint={fieldHint('Sense', stated)}>
         <Select
           size="small"
           value={chosen.sense ?? ''}

@@ -4,6 +4,7 @@
  * 6.5 for 1), so floor 60, contribution 6.5·60 + 12·40 = 870, by hand.
  */
 import { tileWorkbook } from '../domain/model-from-sheet/tile-works';
+import { findAddedRows } from '../../../addin/domain/statement-to-sheet/find-added-rows';
 import { WorkbookError } from '../../../addin/ports/workbook';
 import { PlanEngineError } from '../../../addin/ports/plan-engine';
 import type { PartKey } from '../../../addin/pane/pane-state';
@@ -120,6 +121,17 @@ describe('stating a plan from scratch', () => {
     await pane.press({ kind: 'common-relation-picked', number: 2, relation: '>=' });
     const formulas = Object.fromEntries(pane.workbook.snapshot().names.map((n) => [n.name, n.formula]));
     expect(formulas).toMatchObject({ 'Week.Sense': '"minimise"', 'Week.Relation2': '">="' });
+  });
+
+  it('takes in rows that were added under a block, all names together', async () => {
+    const pane = await paneAtWork(
+      tileWorkbook({ cells: { A5: [['Skirting', null, 7, null, 60, 0.4, 1.1]] } }),
+    );
+    const [added] = findAddedRows(pane.state().workbook!, pane.state().chosen!);
+    await pane.press({ kind: 'extension-pressed', writes: added.writes });
+    const formulas = pane.state().chosen!.parts.map(({ name, formula }) => `${name} ${formula}`);
+    expect(formulas).toContain('Week.Decision Plan!$B$2:$B$5');
+    expect(formulas).toContain('Week.Upper Plan!$E$2:$E$5');
   });
 
   it('takes a part away, and closes a field that was opened for nothing', async () => {
