@@ -336,25 +336,21 @@ export class LuFactorizer {
     let largest = 0;
     let marked = 0;
     let end = active.columnStart[column] + active.columnCount[column];
+    // No branch on whether a row has a multiplier: it could not be foretold, and 0 changes nothing.
     for (let place = active.columnStart[column]; place < end; place++) {
       const row = columnIndex[place];
       const multiplier = scratchMultiplier[row];
-      let size: number;
-      if (multiplier === 0) {
-        size = columnValue[place];
-      } else {
-        scratchMark[row] = mark;
-        marked++;
-        size = columnValue[place] - multiplier * entry;
-        columnValue[place] = size;
-      }
-      if (size < 0) size = -size;
-      if (size < drop && multiplier !== 0) {
+      marked += multiplier === 0 ? 0 : 1;
+      scratchMark[row] = mark;
+      const updated = columnValue[place] - multiplier * entry;
+      columnValue[place] = updated;
+      const size = Math.abs(updated);
+      if (size < drop) {
         active.removeColumnEntry(column, place);
         active.removeFromRow(row, column);
         place--;
         end--;
-      } else if (size > largest) largest = size;
+      } else largest = Math.max(largest, size);
     }
     if (marked === lowerEnd - lowerStart) return largest;
     const { lowerIndex, lowerValue } = this.factors;
