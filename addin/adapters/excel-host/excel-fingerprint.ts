@@ -17,7 +17,7 @@ import { readRoleName } from '../../domain/model-from-sheet/naming-convention';
 import { WorkbookError } from '../../ports/workbook';
 import { RangeQueue } from './excel-chunking';
 import { cellRangeOf, listRanges, placeOfRange } from './excel-ranges';
-import { definedNameOf } from './excel-reading';
+import { definedNameOf, workbookNamesOf } from './excel-reading';
 import { arrayRangesOf, ExcelSheet } from './excel-sheet';
 
 /** Bytes of an entry beside its own text: quotes, comma, the sign of a formula. */
@@ -70,7 +70,7 @@ export class Fingerprint {
 
   private requestStructure(): void {
     const { workbook } = this.context;
-    const names = workbook.names.load('items/name,items/formula,items/visible');
+    const names = workbook.names.load('items/name,items/formula,items/visible,items/scope');
     const sheets = this.basis.sheets.map((sheet) => {
       const worksheet = workbook.worksheets.getItemOrNullObject(sheet.name).load('name');
       const used = worksheet.getUsedRangeOrNullObject(true).load(placeOfRange);
@@ -86,7 +86,7 @@ export class Fingerprint {
       return { snapshot, table, range: table.getRange().load(placeOfRange) };
     });
     this.takeAnswers.push(() => {
-      const present = names.items.map((item) => definedNameOf(item, null));
+      const present = workbookNamesOf(names);
       for (const { sheet, worksheet, used, names: local } of sheets) {
         if (worksheet.isNullObject) {
           if (this.isNeeded(sheet)) throw changedMeanwhile(`the sheet ${sheet.name}`, []);

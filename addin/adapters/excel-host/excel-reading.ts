@@ -73,7 +73,7 @@ export async function readExcelWorkbook(
   const { workbook } = context;
 
   // First round trip: what there is.
-  const names = workbook.names.load('items/name,items/formula,items/visible');
+  const names = workbook.names.load('items/name,items/formula,items/visible,items/scope');
   const worksheets = workbook.worksheets.load('items/id,items/name,items/visibility');
   const tables = workbook.tables.load('items/id,items/name,items/showHeaders,items/showTotals');
   const records = workbook.customXmlParts.getByNamespace(recordNamespace).load('items/id');
@@ -99,7 +99,7 @@ export async function readExcelWorkbook(
       .map(({ table }) => table.worksheet.name),
   );
   const definedNames = [
-    ...names.items.map((item) => definedNameOf(item, null)),
+    ...workbookNamesOf(names),
     ...requests.flatMap(({ name, names: local }) => local.items.map((item) => definedNameOf(item, name))),
   ];
   const sheets: SheetSnapshot[] = [];
@@ -157,6 +157,13 @@ function requestSheet(worksheet: Excel.Worksheet, abilities: ExcelAbilities): Sh
 
 function visibilityOf(visibility: string): SheetVisibility {
   return visibility === 'Visible' ? 'visible' : visibility === 'Hidden' ? 'hidden' : 'veryHidden';
+}
+
+/** Names of workbook scope; a host that lists those of sheets among them is corrected. */
+export function workbookNamesOf(names: Excel.NamedItemCollection): DefinedName[] {
+  return names.items
+    .filter(({ scope }) => scope === Excel.NamedItemScope.workbook)
+    .map((item) => definedNameOf(item, null));
 }
 
 /** Excel shows its own names without the prefix that they have in files. */

@@ -77,7 +77,12 @@ it('AD-100 names that lead nowhere, to computed ranges or to several areas are r
     ['_xlnm.Print_Area', 'Plan!$A$1:$C$3'],
   ]);
   const used = [...host.usedMembers].filter((member) => member.startsWith('NamedItem.'));
-  expect(used.sort()).toEqual(['NamedItem.Formula', 'NamedItem.Name', 'NamedItem.Visible']);
+  expect(used.sort()).toEqual([
+    'NamedItem.Formula',
+    'NamedItem.Name',
+    'NamedItem.Scope',
+    'NamedItem.Visible',
+  ]);
 });
 
 it('hidden rows and columns are known beyond what is used, where results may stand', async () => {
