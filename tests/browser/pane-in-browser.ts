@@ -154,6 +154,19 @@ export async function violationsOf(pane: Frame): Promise<string[]> {
   );
 }
 
+/** Makes the pane's frame as wide as this, as a planner does by pulling its edge. */
+export async function resizePane({ page, pane }: OpenedPane, width: number, height: number): Promise<void> {
+  await page.setViewportSize({ width, height });
+  await page.locator('iframe').evaluate(
+    (frame, size) => {
+      frame.style.width = `${size.width}px`;
+      frame.style.height = `${size.height}px`;
+    },
+    { width, height },
+  );
+  await pane.waitForFunction((wanted) => window.innerWidth === wanted, width);
+}
+
 /** Kept for people to look at, when PLANROW_SHOTS=1 asks for new ones. */
 export async function takeShot(page: Page, name: string): Promise<void> {
   if (process.env.PLANROW_SHOTS === '1') {
