@@ -109,7 +109,13 @@ function pointPart(state: PaneState, part: PartKey, reference: string): Updated 
   }
   if (stated !== undefined && stated.reading.kind !== 'dead') {
     const question: Question = { kind: 'point-elsewhere', part, from: stated.formula, to: reference };
-    return only({ ...clean, question });
+    // The answer of the host comes late: whoever has gone on to the sheet is told, and not called back.
+    const said = [
+      paneTexts.pointElsewhere,
+      paneTexts.pointFrom(question.from),
+      paneTexts.pointTo(question.to),
+    ];
+    return only(announced({ ...clean, question }, said.join(' ')));
   }
   return writeStatement(clean, setPart(chosen.listing, part.role, part.number, reference));
 }

@@ -154,12 +154,7 @@ function PointElsewhere(props: {
       <p className={styles.breakable}>{paneTexts.pointFrom(question.from)}</p>
       <p className={styles.breakable}>{paneTexts.pointTo(question.to)}</p>
       <div className={styles.row}>
-        <Button
-          size="small"
-          appearance="primary"
-          autoFocus
-          onClick={() => dispatch({ kind: 'question-confirmed' })}
-        >
+        <Button size="small" appearance="primary" onClick={() => dispatch({ kind: 'question-confirmed' })}>
           {paneTexts.pointThere}
         </Button>
         <Button size="small" onClick={() => dispatch({ kind: 'question-cancelled' })}>

@@ -107,6 +107,7 @@ describe('stating a plan from scratch', () => {
       from: 'Plan!$B$2:$B$4',
       to: 'Plan!$B$2:$B$3',
     });
+    expect(pane.said.at(-1)).toBe('Point it at other cells? Now: Plan!$B$2:$B$4 Then: Plan!$B$2:$B$3');
     await pane.press({ kind: 'question-cancelled' });
     const decision = () => pane.state().chosen?.parts.find(({ role }) => role === 'Decision')?.formula;
     expect(decision()).toBe('Plan!$B$2:$B$4');
