@@ -38,7 +38,11 @@ export class LuFactorizer {
   /** Length m: 1 once a row has its pivot. */
   private readonly isRowDone: Uint8Array;
   private readonly columnLargest: Float64Array;
-  private readonly scratchMultiplier: Float64Array;
+  /** Length m, all 0 between pivots: multipliers by row, or entries of the pivot row by position. */
+  private readonly scratchValue: Float64Array;
+  /** The other entries of the pivot row. */
+  private readonly otherColumn: Int32Array;
+  private readonly otherValue: Float64Array;
   private readonly scratchMark: Int32Array;
   private mark = 0;
   private readonly patternStart: Int32Array;
@@ -65,7 +69,9 @@ export class LuFactorizer {
     this.rowOfPosition = new Int32Array(m);
     this.isRowDone = new Uint8Array(m);
     this.columnLargest = new Float64Array(m);
-    this.scratchMultiplier = new Float64Array(m);
+    this.scratchValue = new Float64Array(m);
+    this.otherColumn = new Int32Array(m);
+    this.otherValue = new Float64Array(m);
     this.scratchMark = new Int32Array(m);
     this.patternStart = new Int32Array(m + 1);
     this.activeInColumn = new Int32Array(m);
@@ -314,13 +320,142 @@ export class LuFactorizer {
         settings.singularPivot,
       );
       if (!found) return; // singular: the caller fills up with logicals
-      this.eliminate(this.search.pivotRow, this.search.pivotColumn, settings.drop);
+      this.eliminate(this.search.pivotRow, this.search.pivotColumn, this.search.pivotAt, settings.drop);
     }
   }
 
+  /** Takes out one pivot: stores its columns of L and U and updates the rest. */
+  private eliminate(pivotRow: number, pivotColumn: number, pivotAt: number, drop: number): void {
+    const { active, columnsByCount, rowsByCount, factors, columnLargest } = this;
+    const pivot = active.columnValue[pivotAt];
+    columnsByCount.remove(pivotColumn, active.columnCount[pivotColumn]);
+    rowsByCount.remove(pivotRow, active.rowCount[pivotRow]);
+    active.removeEntry(pivotColumn, pivotAt);
+    const lowerCount = this.takeLowerColumn(pivotRow, pivotColumn, pivot);
+    const otherCount = this.takePivotRow(pivotRow);
+    if (lowerCount > 0 && otherCount > 0) {
+      if (this.isCheaperAlongRows(pivotRow, otherCount)) this.updateRows(pivotRow, otherCount, drop);
+      else this.updateColumns(pivotRow, otherCount, drop);
+    } else {
+      for (let k = 0; k < otherCount; k++) columnLargest[this.otherColumn[k]] = -1;
+    }
+    for (let k = 0; k < otherCount; k++) {
+      columnsByCount.insert(this.otherColumn[k], active.columnCount[this.otherColumn[k]]);
+    }
+    for (let lower = factors.lowerStart[pivotRow]; lower < factors.lowerEnd[pivotRow]; lower++) {
+      const row = factors.lowerIndex[lower];
+      rowsByCount.insert(row, active.rowCount[row]);
+    }
+    this.storeUpperColumn(pivotRow, pivotColumn, pivot);
+  }
+
+  /** L's column from what is left of the pivot column, which is given up; its rows leave their lists. @returns its length */
+  private takeLowerColumn(pivotRow: number, pivotColumn: number, pivot: number): number {
+    const { active, factors, rowsByCount } = this;
+    const count = active.columnCount[pivotColumn];
+    factors.reserveLower(count);
+    const lowerStart = (factors.lowerStart[pivotRow] = factors.lowerSize);
+    const start = active.columnStart[pivotColumn];
+    for (let k = 0; k < count; k++) {
+      const row = active.columnIndex[start + k];
+      factors.lowerIndex[lowerStart + k] = row;
+      factors.lowerValue[lowerStart + k] = active.columnValue[start + k] / pivot;
+      rowsByCount.remove(row, active.rowCount[row]);
+      active.removeFromRow(start + k);
+    }
+    factors.lowerEnd[pivotRow] = factors.lowerSize = lowerStart + count;
+    if (count > 0) factors.lowerOrder[factors.lowerCount++] = pivotRow;
+    return count;
+  }
+
+  /** The other entries of the pivot row, which is given up; their columns leave their lists. @returns how many */
+  private takePivotRow(pivotRow: number): number {
+    const { active, columnsByCount } = this;
+    const count = active.rowCount[pivotRow];
+    const start = active.rowStart[pivotRow];
+    for (let k = 0; k < count; k++) {
+      const column = active.rowIndex[start + k];
+      const at = active.rowLink[start + k];
+      this.otherColumn[k] = column;
+      this.otherValue[k] = active.columnValue[at];
+      columnsByCount.remove(column, active.columnCount[column]);
+      active.removeFromColumn(column, at);
+      this.pushUpper(column, pivotRow, this.otherValue[k]);
+    }
+    return count;
+  }
+
+  /** Elimination looks at all entries of the rows it changes, or at all of the columns: whichever are fewer. */
+  private isCheaperAlongRows(pivotRow: number, otherCount: number): boolean {
+    const { active, factors } = this;
+    let inColumns = 0;
+    for (let k = 0; k < otherCount; k++) inColumns += active.columnCount[this.otherColumn[k]];
+    let inRows = 0;
+    for (let lower = factors.lowerStart[pivotRow]; lower < factors.lowerEnd[pivotRow]; lower++) {
+      inRows += active.rowCount[factors.lowerIndex[lower]];
+    }
+    this.work += Math.min(inRows, inColumns);
+    return inRows < inColumns;
+  }
+
+  /** hot: subtracts multiples of the pivot row from each row of L's column, row by row. */
+  private updateRows(pivotRow: number, otherCount: number, drop: number): void {
+    const { active, factors, otherColumn, otherValue, scratchValue, scratchMark, columnLargest } = this;
+    for (let k = 0; k < otherCount; k++) {
+      scratchValue[otherColumn[k]] = otherValue[k];
+      columnLargest[otherColumn[k]] = -1;
+    }
+    for (let lower = factors.lowerStart[pivotRow]; lower < factors.lowerEnd[pivotRow]; lower++) {
+      const row = factors.lowerIndex[lower];
+      const multiplier = factors.lowerValue[lower];
+      const mark = ++this.mark;
+      const { rowIndex, rowLink, columnValue } = active;
+      let touched = 0;
+      let end = active.rowStart[row] + active.rowCount[row];
+      for (let place = active.rowStart[row]; place < end; place++) {
+        const column = rowIndex[place];
+        const entry = scratchValue[column];
+        if (entry === 0) continue;
+        scratchMark[column] = mark;
+        touched++;
+        const at = rowLink[place];
+        const updated = columnValue[at] - multiplier * entry;
+        columnValue[at] = updated;
+        if (updated > -drop && updated < drop) {
+          active.removeEntry(column, at);
+          place--;
+          end--;
+        }
+      }
+      if (touched === otherCount) continue;
+      for (let k = 0; k < otherCount; k++) {
+        if (scratchMark[otherColumn[k]] === mark) continue;
+        const filled = -multiplier * otherValue[k];
+        if (filled <= -drop || filled >= drop) active.addEntry(row, otherColumn[k], filled);
+      }
+      this.work += otherCount;
+    }
+    for (let k = 0; k < otherCount; k++) scratchValue[otherColumn[k]] = 0;
+  }
+
+  /** The same, column by column. */
+  private updateColumns(pivotRow: number, otherCount: number, drop: number): void {
+    const { factors, scratchValue, columnLargest, otherColumn, otherValue } = this;
+    const lowerStart = factors.lowerStart[pivotRow];
+    const lowerEnd = factors.lowerEnd[pivotRow];
+    for (let lower = lowerStart; lower < lowerEnd; lower++) {
+      scratchValue[factors.lowerIndex[lower]] = factors.lowerValue[lower];
+    }
+    for (let k = 0; k < otherCount; k++) {
+      const column = otherColumn[k];
+      columnLargest[column] = this.updateColumn(column, otherValue[k], lowerStart, lowerEnd, drop);
+    }
+    this.work += otherCount * (lowerEnd - lowerStart);
+    for (let lower = lowerStart; lower < lowerEnd; lower++) scratchValue[factors.lowerIndex[lower]] = 0;
+  }
+
   /**
-   * Subtracts `entry` × the pivot column's multipliers from a column.
-   * hot: once for each other entry of each pivot row.
+   * hot: subtracts `entry` × the pivot column's multipliers from a column.
    * @returns largest magnitude in the column afterwards
    */
   private updateColumn(
@@ -330,25 +465,24 @@ export class LuFactorizer {
     lowerEnd: number,
     drop: number,
   ): number {
-    const { active, scratchMultiplier, scratchMark } = this;
+    const { active, scratchValue, scratchMark } = this;
     const { columnIndex, columnValue } = active;
     const mark = ++this.mark;
     let largest = 0;
     let marked = 0;
     let end = active.columnStart[column] + active.columnCount[column];
     // No branch on whether a row has a multiplier: it could not be foretold, and 0 changes nothing.
-    for (let place = active.columnStart[column]; place < end; place++) {
-      const row = columnIndex[place];
-      const multiplier = scratchMultiplier[row];
+    for (let at = active.columnStart[column]; at < end; at++) {
+      const row = columnIndex[at];
+      const multiplier = scratchValue[row];
       marked += multiplier === 0 ? 0 : 1;
       scratchMark[row] = mark;
-      const updated = columnValue[place] - multiplier * entry;
-      columnValue[place] = updated;
+      const updated = columnValue[at] - multiplier * entry;
+      columnValue[at] = updated;
       const size = Math.abs(updated);
       if (size < drop) {
-        active.removeColumnEntry(column, place);
-        active.removeFromRow(row, column);
-        place--;
+        active.removeEntry(column, at);
+        at--;
         end--;
       } else largest = Math.max(largest, size);
     }
@@ -366,58 +500,8 @@ export class LuFactorizer {
     return largest;
   }
 
-  /** Takes out one pivot: stores its columns of L and U and updates the rest. */
-  private eliminate(pivotRow: number, pivotColumn: number, drop: number): void {
-    const { active, columnsByCount, rowsByCount, factors, scratchMultiplier, columnLargest } = this;
-    const pivotAt = active.findInColumn(pivotColumn, pivotRow);
-    const pivot = active.columnValue[pivotAt];
-    columnsByCount.remove(pivotColumn, active.columnCount[pivotColumn]);
-    rowsByCount.remove(pivotRow, active.rowCount[pivotRow]);
-    active.removeColumnEntry(pivotColumn, pivotAt);
-    active.removeFromRow(pivotRow, pivotColumn);
-
-    // L's column, its rows out of the pivot column's pattern
-    const lowerCount = active.columnCount[pivotColumn];
-    factors.reserveLower(lowerCount);
-    const lowerStart = (factors.lowerStart[pivotRow] = factors.lowerSize);
-    {
-      const start = active.columnStart[pivotColumn];
-      for (let k = 0; k < lowerCount; k++) {
-        const row = active.columnIndex[start + k];
-        const multiplier = active.columnValue[start + k] / pivot;
-        factors.lowerIndex[lowerStart + k] = row;
-        factors.lowerValue[lowerStart + k] = multiplier;
-        scratchMultiplier[row] = multiplier;
-        rowsByCount.remove(row, active.rowCount[row]);
-        active.removeFromRow(row, pivotColumn);
-      }
-    }
-    const lowerEnd = (factors.lowerEnd[pivotRow] = factors.lowerSize = lowerStart + lowerCount);
-    if (lowerCount > 0) factors.lowerOrder[factors.lowerCount++] = pivotRow;
-
-    // the other columns of the pivot row
-    const otherCount = active.rowCount[pivotRow];
-    const rowStart = active.rowStart[pivotRow];
-    for (let k = 0; k < otherCount; k++) {
-      const column = active.rowIndex[rowStart + k];
-      const at = active.findInColumn(column, pivotRow);
-      const entry = active.columnValue[at];
-      columnsByCount.remove(column, active.columnCount[column]);
-      active.removeColumnEntry(column, at);
-      this.pushUpper(column, pivotRow, entry);
-      if (lowerCount > 0) {
-        columnLargest[column] = this.updateColumn(column, entry, lowerStart, lowerEnd, drop);
-        this.work += active.columnCount[column] + lowerCount;
-      } else columnLargest[column] = -1;
-      columnsByCount.insert(column, active.columnCount[column]);
-    }
-    for (let lower = lowerStart; lower < lowerEnd; lower++) {
-      const row = factors.lowerIndex[lower];
-      scratchMultiplier[row] = 0;
-      rowsByCount.insert(row, active.rowCount[row]);
-    }
-
-    // U's column
+  private storeUpperColumn(pivotRow: number, pivotColumn: number, pivot: number): void {
+    const { factors } = this;
     let upperCount = 0;
     for (let at = this.upperHead[pivotColumn]; at >= 0; at = this.upperNext[at]) upperCount++;
     factors.reserveUpper(upperCount);

@@ -14,6 +14,8 @@ export class MarkowitzPivotSearch {
   /** The pivot found; valid after `find` returned true. */
   pivotRow = -1;
   pivotColumn = -1;
+  /** Where it stands in its column. */
+  pivotAt = -1;
 
   /**
    * @param columnLargest largest magnitude in each active column, or −1 where it must be computed again
@@ -48,6 +50,7 @@ export class MarkowitzPivotSearch {
           bestMerit = merit;
           this.pivotRow = row;
           this.pivotColumn = column;
+          this.pivotAt = at;
         }
         if (this.pivotRow >= 0 && (++looked >= searchDepth || bestMerit <= (count - 1) * (count - 1)))
           return true;
@@ -55,17 +58,19 @@ export class MarkowitzPivotSearch {
       for (let row = rowsByCount.firstWith(count); row >= 0; row = rowsByCount.after(row)) {
         const start = active.rowStart[row];
         const end = start + active.rowCount[row];
-        for (let at = start; at < end; at++) {
-          const column = active.rowIndex[at];
+        for (let place = start; place < end; place++) {
+          const column = active.rowIndex[place];
           const merit = (count - 1) * (active.columnCount[column] - 1);
           if (merit >= bestMerit) continue;
           const largest = largestInColumn(active, column, columnLargest);
           if (largest < singularPivot) continue;
-          const size = Math.abs(active.columnValue[active.findInColumn(column, row)]);
-          if (size < threshold * largest) continue;
+          const at = active.rowLink[place];
+          if (Math.abs(active.columnValue[at]) < threshold * largest) continue;
           bestMerit = merit;
           this.pivotRow = row;
           this.pivotColumn = column;
+          this.pivotAt = at;
+          this.pivotAt = at;
         }
         if (this.pivotRow >= 0 && (++looked >= searchDepth || bestMerit <= count * (count - 1))) return true;
       }
