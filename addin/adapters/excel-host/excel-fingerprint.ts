@@ -141,7 +141,7 @@ export class Fingerprint {
     for (let row = part.top; row <= part.bottom; row++) {
       for (let column = part.left; column <= part.right; column++) {
         const present = formulas[row - part.top][column - part.left];
-        if (present !== entryIn(sheet, row, column) && !filled.has(cellKey(row, column))) {
+        if (!isSameEntry(present, entryIn(sheet, row, column)) && !filled.has(cellKey(row, column))) {
           this.differing.push({ sheet: sheet.name, top: row, left: column, bottom: row, right: column });
         }
       }
@@ -249,6 +249,14 @@ function entryIn(sheet: SheetSnapshot, row: number, column: number): unknown {
   if (cell?.formula !== undefined) return `=${cell.formula}`;
   const value = cell?.value ?? '';
   return value instanceof CellError ? value.code : value;
+}
+
+/** A text may be handed out with the apostrophe that keeps it one, and a truth value as a word. */
+function isSameEntry(present: unknown, read: unknown): boolean {
+  if (typeof present !== 'string' || present === read) return present === read;
+  return typeof read === 'boolean'
+    ? present.toUpperCase() === String(read).toUpperCase()
+    : present.startsWith("'") && present.slice(1) === read;
 }
 
 /** Cells that an array formula fills, its first one apart: they follow from that one. */
