@@ -43,7 +43,7 @@ const views: Readonly<
       await pane.getByText('3 decision cells, Plan!B2:B4').waitFor();
       host.select('Plan', { top: 1, left: 1, bottom: 2, right: 1 });
       await press(pane, 'Use selection for Decision cells');
-      await pane.getByText('Then: Plan!$B$2:$B$3').waitFor();
+      await pane.getByText('Then: Plan!$B$2:$B$3').first().waitFor();
     },
   },
   issues: {
