@@ -3,17 +3,13 @@
  */
 import { existsSync, readFileSync } from 'node:fs';
 import path from 'node:path';
-import { fileURLToPath } from 'node:url';
 import { gunzipSync } from 'node:zlib';
 import type { Highs } from 'highs';
 import type { LinearProgram, SolveResult } from '#solver-core';
 import { loadHighsOnce, solveWithHighs, toHighsModel } from '../oracles/highs-reference';
 import { loadBuiltCore, type SolverCore } from './built-core';
-import { geometricMean, inMilliseconds, median, table, timeOf } from './timing';
-
-const lpFolder =
-  process.env.PLANROW_LP ??
-  path.resolve(path.dirname(fileURLToPath(import.meta.url)), '..', '..', '..', 'shared', 'lp');
+import { lpFolder } from './lp-folder';
+import { geometricMean, inMilliseconds, least, median, table, timeOf } from './timing';
 
 /** Rounds of each problem: these at most; no further one is begun after `enough` milliseconds and `least` rounds. */
 const rounds = { least: 3, most: 15 };
@@ -27,10 +23,13 @@ interface Measured {
   readonly name: string;
   readonly size: string;
   readonly reading: number;
-  readonly ours: number;
-  readonly theirs: number;
+  /** Milliseconds of each round. */
+  readonly ours: readonly number[];
+  readonly theirs: readonly number[];
+  readonly withoutPresolve: readonly number[];
   readonly result: SolveResult;
   readonly isRight: boolean;
+  readonly isRightWithoutPresolve: boolean;
 }
 
 /** A section of the report; '' where the shared folder is missing. */
@@ -89,7 +88,9 @@ async function measureProblem(
   model.options.set({ output_flag: false, presolve: 'on', solver: 'simplex' });
   const ours: number[] = [];
   const theirs: number[] = [];
+  const withoutPresolve: number[] = [];
   let result: SolveResult | undefined;
+  let resultWithout: SolveResult | undefined;
   const begun = performance.now();
   for (let round = 0; round < rounds.most; round++) {
     const spent = performance.now() - begun;
@@ -99,20 +100,27 @@ async function measureProblem(
     const run = await timeOf(() => core.solve(problem));
     ours.push(run.milliseconds);
     result = run.value;
+    const runWithout = await timeOf(() => core.solve(problem, { presolve: false }));
+    withoutPresolve.push(runWithout.milliseconds);
+    resultWithout = runWithout.value;
   }
   model.dispose();
-  const isRight =
-    result!.status === 'optimal' &&
-    Math.abs(result!.objective - expected) <= 1e-6 * Math.max(1, Math.abs(expected));
   return {
     name,
     size: sizeOf(problem),
     reading,
-    ours: median(ours),
-    theirs: median(theirs),
+    ours,
+    theirs,
+    withoutPresolve,
     result: result!,
-    isRight,
+    isRight: isAt(expected, result!),
+    isRightWithoutPresolve: isAt(expected, resultWithout!),
   };
+}
+
+function isAt(expected: number, result: SolveResult): boolean {
+  const allowed = 1e-6 * Math.max(1, Math.abs(expected));
+  return result.status === 'optimal' && Math.abs(result.objective - expected) <= allowed;
 }
 
 function sizeOf({ rowCount, columnCount, matrix }: LinearProgram): string {
@@ -120,37 +128,51 @@ function sizeOf({ rowCount, columnCount, matrix }: LinearProgram): string {
 }
 
 function report(set: string, measured: readonly Measured[]): string {
-  const rows = measured.map(({ name, size, reading, ours, theirs, result, isRight }) => [
-    name,
-    size,
-    inMilliseconds(reading),
-    inMilliseconds(ours),
-    inMilliseconds(theirs),
-    (ours / theirs).toFixed(2),
-    String(result.iterations),
-    isRight ? 'right' : `**${result.status}**`,
-    ...(result.status === 'optimal'
-      ? [result.residuals.primal, result.residuals.dual, result.residuals.dualityGap].map((residual) =>
-          residual.toExponential(0),
+  const rows = measured.map((one) => [
+    one.name,
+    one.size,
+    inMilliseconds(one.reading),
+    inMilliseconds(median(one.ours)),
+    inMilliseconds(median(one.theirs)),
+    inMilliseconds(least(one.ours)),
+    inMilliseconds(least(one.theirs)),
+    (least(one.ours) / least(one.theirs)).toFixed(2),
+    inMilliseconds(least(one.withoutPresolve)) + (one.isRightWithoutPresolve ? '' : ' **wrong**'),
+    String(one.result.iterations),
+    one.isRight ? 'right' : `**${one.result.status}**`,
+    ...(one.result.status === 'optimal'
+      ? [one.result.residuals.primal, one.result.residuals.dual, one.result.residuals.dualityGap].map(
+          (residual) => residual.toExponential(0),
         )
       : ['', '', '']),
   ]);
-  const mean = geometricMean(measured.map(({ ours }) => ours));
-  const theirMean = geometricMean(measured.map(({ theirs }) => theirs));
+  const meanOf = (take: (one: Measured) => number): number => geometricMean(measured.map(take));
+  const ratioOf = (of: (values: readonly number[]) => number): string =>
+    meanOf(({ ours, theirs }) => of(ours) / of(theirs)).toFixed(2);
+  const slow = measured.filter(({ ours, theirs }) => median(theirs) > 50 && least(ours) > 5 * least(theirs));
   const right = measured.filter(({ isRight }) => isRight).length;
+  const rightWithout = measured.filter(({ isRightWithoutPresolve }) => isRightWithoutPresolve).length;
   return [
-    `## ${set}: ${right} of ${measured.length} right to 1e-6`,
+    `## ${set}: ${right} of ${measured.length} right to 1e-6, ${rightWithout} without presolve`,
     '',
-    `Solve alone, geometric mean: ours ${inMilliseconds(mean)} ms, HiGHS ${inMilliseconds(theirMean)} ms, ratio ${(mean / theirMean).toFixed(2)}.`,
+    `Solve alone, geometric means. Medians: ours ${inMilliseconds(meanOf(({ ours }) => median(ours)))} ms, ` +
+      `HiGHS ${inMilliseconds(meanOf(({ theirs }) => median(theirs)))} ms, ratio ${ratioOf(median)}. ` +
+      `Least of the rounds: ours ${inMilliseconds(meanOf(({ ours }) => least(ours)))} ms, ` +
+      `HiGHS ${inMilliseconds(meanOf(({ theirs }) => least(theirs)))} ms, ratio **${ratioOf(least)}** (figure to reach: 1.00); ` +
+      `ours without presolve ${inMilliseconds(meanOf(({ withoutPresolve }) => least(withoutPresolve)))} ms. ` +
+      `Over five times HiGHS where that needs over 50 ms: ${slow.length === 0 ? 'none' : slow.map(({ name }) => name).join(', ')}.`,
     '',
     table(
       [
         'problem',
         'rows × columns, entries',
         'reading ms',
-        'ours ms',
-        'HiGHS ms',
-        'ratio',
+        'ours ms, median',
+        'HiGHS ms, median',
+        'ours ms, least',
+        'HiGHS ms, least',
+        'ratio of the least',
+        'no presolve ms, least',
         'iterations',
         'answer',
         'primal',

@@ -2,35 +2,41 @@
  * Times what design says figures for, and writes tests/benchmarks/RESULTS.md.
  *
  *     npm run bench                      all of it
- *     npm run bench -- --only afiro,plan one or several problems or parts (netlib, kennington, plan, reading)
+ *     npm run bench -- --only afiro,plan one or several problems or parts (reading, plan, memory, netlib, kennington)
  *     npm run bench -- --dry             prints without writing RESULTS.md
  *
  * Our solve and HiGHS (WebAssembly, simplex, its presolve on) run in this one process, turn and turn about, on the
- * same problem, reading left out; `--no-liftoff` lets WebAssembly start at its full speed. What is given is the
- * median of the rounds; ratios are of medians. Every answer is checked against the value to test against.
+ * same problem, reading left out; `--no-liftoff` lets WebAssembly start at its full speed. Given are the median of the
+ * rounds and the least of them; ratios are of the least, which others on the machine disturb least. Every answer is
+ * checked against the value to test against. Where the time goes is written by hand, in where-the-time-goes.md.
  */
-import { writeFileSync } from 'node:fs';
+import { readFileSync, writeFileSync } from 'node:fs';
 import { cpus, totalmem } from 'node:os';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
+import { measureMemory } from './measure-memory';
 import { measureReading } from './measure-reading';
 import { measureSheetPlans } from './measure-sheet-plans';
 import { measureProblemSet } from './measure-problem-sets';
 
+const parts = ['reading', 'plan', 'memory', 'netlib', 'kennington'];
 const folder = path.dirname(fileURLToPath(import.meta.url));
 
 async function main(): Promise<void> {
   const only = argument('--only')?.split(',');
   const wants = (part: string): boolean => only === undefined || only.includes(part);
-  const names = only?.filter((word) => !['netlib', 'kennington', 'plan', 'reading'].includes(word)) ?? [];
+  const names = only?.filter((word) => !parts.includes(word)) ?? [];
   const sections: string[] = [];
   if (wants('reading')) sections.push(await measureReading());
   if (wants('plan')) sections.push(await measureSheetPlans());
+  if (wants('memory')) sections.push(measureMemory());
   for (const set of ['netlib', 'kennington'] as const) {
     if (wants(set) || names.length > 0) {
       sections.push(await measureProblemSet(set, wants(set) ? undefined : names));
     }
   }
+  if (only === undefined)
+    sections.push(readFileSync(path.join(folder, 'where-the-time-goes.md'), 'utf8').trimEnd());
   const report = [
     '# Benchmark results',
     '',

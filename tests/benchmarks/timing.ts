@@ -7,10 +7,18 @@ export async function timeOf<T>(work: () => T | Promise<T>): Promise<{ milliseco
   return { milliseconds: performance.now() - start, value };
 }
 
-/** The middle one; of an even number the lower middle one. */
-export function median(values: readonly number[]): number {
+/** The value below which this share of the values lies: 0 the least, 0.5 the (lower) middle one. */
+export function quantile(values: readonly number[], share: number): number {
   const sorted = [...values].sort((a, b) => a - b);
-  return sorted[(sorted.length - 1) >> 1];
+  return sorted[Math.floor((sorted.length - 1) * share)];
+}
+
+export function median(values: readonly number[]): number {
+  return quantile(values, 0.5);
+}
+
+export function least(values: readonly number[]): number {
+  return quantile(values, 0);
 }
 
 export function geometricMean(values: readonly number[]): number {
