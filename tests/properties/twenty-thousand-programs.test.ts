@@ -32,6 +32,9 @@ const counts = { small: shareOf(2000, 1), large: shareOf(500, 1) };
 /** Relative, with 1 as the least to be relative to. */
 const tolerance = 1e-6;
 
+/** Many times what any of them needs: a solve that goes round in circles is then a fault and no endless run. */
+const iterationLimit = 20_000;
+
 interface Reference {
   readonly status: string;
   readonly objective?: number;
@@ -69,12 +72,12 @@ function faultsOfAll(
   const faults = seedsOf(shape, size).flatMap((seed) => {
     const shaped = shapedProgram(seed, shape, size);
     const { problem } = shaped;
-    const withPresolve = solve(problem);
+    const withPresolve = solve(problem, { iterationLimit });
     const first = refer(shaped);
     const reference = first.status === withPresolve.status ? first : (referAgain?.(shaped) ?? first);
     if (reference.status in endings) endings[reference.status as keyof typeof endings]++;
     return [true, false].flatMap((presolve) => {
-      const result = presolve ? withPresolve : solve(problem, { presolve });
+      const result = presolve ? withPresolve : solve(problem, { presolve, iterationLimit });
       const named = (fault: string): string => `seed ${seed}, presolve ${presolve}: ${fault}`;
       if (result.status === 'imprecise') {
         imprecise.push(named(result.reason));
