@@ -1,3 +1,4 @@
+import officeAddins from 'eslint-plugin-office-addins';
 import tseslint from 'typescript-eslint';
 
 /** Names that would let a clock, randomness or a host into the solver core (solver-core/SPEC.md, SC-2). */
@@ -36,6 +37,14 @@ export default tseslint.config(
       'prefer-const': 'error',
       'no-var': 'error',
     },
+  },
+  {
+    // The only room that names Office: load before read, sync before read, no sync in a loop.
+    files: ['addin/adapters/excel-host/**/*.ts'],
+    plugins: { 'office-addins': officeAddins },
+    rules: Object.fromEntries(
+      Object.keys(officeAddins.rules).map((rule) => [`office-addins/${rule}`, 'error']),
+    ),
   },
   {
     files: ['solver-core/**/*.ts'],
