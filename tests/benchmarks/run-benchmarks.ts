@@ -11,7 +11,7 @@
  * checked against the value to test against. Where the time goes is written by hand, in where-the-time-goes.md.
  */
 import { readFileSync, writeFileSync } from 'node:fs';
-import { cpus, totalmem } from 'node:os';
+import { cpus, loadavg, totalmem } from 'node:os';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { measureMemory } from './measure-memory';
@@ -52,8 +52,9 @@ async function main(): Promise<void> {
 }
 
 function machine(): string {
+  const load = loadavg().map((average) => average.toFixed(1));
   const gigabytes = Math.round(totalmem() / 2 ** 30);
-  return `${cpus().length} shared cores (${cpus()[0].model}), ${gigabytes} GB, Node ${process.version}`;
+  return `${cpus().length} shared cores (${cpus()[0].model}), ${gigabytes} GB, Node ${process.version}, load averages at the end ${load.join(', ')} (of which 1 is this run’s own)`;
 }
 
 function argument(name: string): string | undefined {
