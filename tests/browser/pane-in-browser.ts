@@ -174,3 +174,19 @@ export async function takeShot(page: Page, name: string): Promise<void> {
     await page.screenshot({ path: path.join(shotsFolder, `${name}.png`) });
   }
 }
+
+/** Presses Solve on the large plan of pane-workbooks.ts and waits until its results are written. */
+export async function solveLargePlan({
+  pane,
+  host,
+  keyboard,
+}: Pick<OpenedPane, 'pane' | 'host' | 'keyboard'>): Promise<void> {
+  await keyboard.tabTo('button', 'Solve');
+  host.resetTraffic();
+  await keyboard.keys('Enter');
+  // The last round trip writes; Put back is offered again once it is answered.
+  while (host.traffic.roundTrips < 6) {
+    await pane.evaluate(() => new Promise((resolve) => requestAnimationFrame(resolve)));
+  }
+  await pane.getByRole('button', { name: 'Put back' }).waitFor({ timeout: 50_000 });
+}
