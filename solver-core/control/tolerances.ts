@@ -38,6 +38,11 @@ export const tolerances = {
   updateAgreement: 1e-6,
   /** Results of triangular solves: entries below this are set to 0; absolute, scaled space. */
   solveDrop: 1e-14,
+  /**
+   * Dual loop: has the objective risen since the last look? Relative to 1 + |objective|. Reason: far below what a
+   * single step of perturbed costs brings, above the rounding of the sum.
+   */
+  dualProgress: 1e-13,
   /** Dual steepest edge weights never fall below this. Reason: a weight is a squared norm, at least about 1 in theory. */
   leastEdgeWeight: 1e-4,
   /** Cost perturbation: base size, relative to a cost's magnitude (Koberstein 2005, §6.3.2). */

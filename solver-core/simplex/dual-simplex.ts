@@ -16,6 +16,9 @@ import { refinedRowSolve } from './refine-solution';
 import type { SimplexIterate } from './simplex-iterate';
 import { tableauRow } from './tableau-row';
 
+/** Iterations between two looks at the objective, beyond one for each row. */
+const iterationsBetweenLooks = 300;
+
 export class DualSimplex {
   readonly weights: DualSteepestEdge;
   /** After 'infeasible': the position that cannot be made feasible, with the sign of the ratio test. */
@@ -30,6 +33,9 @@ export class DualSimplex {
   private readonly isBarred: Uint8Array;
   private barredCount = 0;
   private needsFactorization = false;
+  /** Objective at the last look, and the iteration of the next one. */
+  private objectiveSeen = -Infinity;
+  private nextLook = 0;
 
   constructor(private readonly iterate: SimplexIterate) {
     const { rowCount, variableCount } = iterate.form;
@@ -42,6 +48,25 @@ export class DualSimplex {
     this.isBarred = new Uint8Array(rowCount);
   }
 
+  /** To be called when the loop is entered anew: with other bounds, costs or another basis. */
+  restart(): void {
+    this.objectiveSeen = -Infinity;
+    this.nextLook = this.iterate.iterations + iterationsBetweenLooks + this.iterate.form.rowCount;
+  }
+
+  /**
+   * Bases may repeat in spite of perturbed costs, when steps within the tolerance of the ratio test undo one another.
+   * The objective, which rises otherwise, then stands still from one look to the next.
+   */
+  private isStalled(): boolean {
+    if (this.iterate.iterations < this.nextLook) return false;
+    const objective = this.iterate.objective();
+    const hasRisen = objective > this.objectiveSeen + tolerances.dualProgress * (1 + Math.abs(objective));
+    this.objectiveSeen = objective;
+    this.nextLook = this.iterate.iterations + iterationsBetweenLooks + this.iterate.form.rowCount;
+    return !hasRisen;
+  }
+
   /** Iterates until an end is known, the slice of work is spent or the iteration limit is reached. */
   run(meter: WorkMeter, iterationLimit: number): LoopEnd {
     const { iterate } = this;
@@ -50,6 +75,7 @@ export class DualSimplex {
       meter.spend(factorization.takeWork());
       if (meter.isSliceSpent) return 'paused';
       if (iterate.iterations >= iterationLimit) return 'limit';
+      if (this.isStalled()) return 'stalled';
       if (this.needsFactorization || factorization.shouldRefactorize) this.renew();
       const position = this.choosePosition(meter);
       if (position < 0) {

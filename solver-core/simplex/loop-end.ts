@@ -8,7 +8,7 @@ export type LoopEnd =
   | 'infeasible'
   /** Primal loop: an unbounded direction. */
   | 'unbounded'
-  /** Primal loop: many steps without progress; bounds or rules must change. */
+  /** Many steps without progress: bounds, costs, rules or the algorithm must change. */
   | 'stalled'
   /** Pivots could not be trusted even with fresh factors. */
   | 'trouble'

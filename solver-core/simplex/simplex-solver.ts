@@ -95,7 +95,7 @@ export class SimplexSolver {
     }
     iterate.restAtRightBounds();
     if (iterate.reduced.infeasibilities(settings.dualTolerance).count > 0) this.enterDualPhaseOne();
-    else this.currentStage = 'dual';
+    else this.enterDual();
   }
 
   /**
@@ -110,7 +110,7 @@ export class SimplexSolver {
     }
     iterate.restAtRightBounds();
     iterate.shiftCostsToFeasibility(settings.dualTolerance, Infinity);
-    this.currentStage = 'dual';
+    this.enterDual();
   }
 
   private runStage(meter: WorkMeter): LoopEnd {
@@ -126,7 +126,7 @@ export class SimplexSolver {
     if (end === 'limit') return { kind: 'limit' };
     switch (this.currentStage) {
       case 'dual phase one':
-        return this.afterDualPhaseOne();
+        return end === 'stalled' ? this.leaveDual() : this.afterDualPhaseOne();
       case 'dual':
         return this.afterDual(end);
       case 'primal':
@@ -140,7 +140,7 @@ export class SimplexSolver {
     iterate.reduced.recompute(iterate.factorization);
     iterate.restAtRightBounds();
     if (iterate.shiftCostsToFeasibility(settings.dualTolerance, smallCostShift)) {
-      this.currentStage = 'dual';
+      this.enterDual();
       return;
     }
     if (iterate.costs.kind !== 'stated') {
@@ -148,7 +148,7 @@ export class SimplexSolver {
       iterate.reduced.recompute(iterate.factorization);
       iterate.restAtRightBounds();
       if (iterate.shiftCostsToFeasibility(settings.dualTolerance, smallCostShift)) {
-        this.currentStage = 'dual';
+        this.enterDual();
         return;
       }
       iterate.costs.restore();
@@ -160,6 +160,7 @@ export class SimplexSolver {
   private afterDual(end: LoopEnd): SimplexEnd | undefined {
     const { iterate, settings } = this;
     if (end === 'infeasible') return { kind: 'infeasible', ray: this.dual.infeasibleRay() };
+    if (end === 'stalled') return this.leaveDual();
     if (iterate.costs.kind !== 'stated') {
       iterate.costs.restore();
       iterate.reduced.recompute(iterate.factorization);
@@ -183,7 +184,7 @@ export class SimplexSolver {
         const { primalTolerance } = this.settings;
         if (iterate.primal.infeasibilities(primalTolerance).count === 0) return { kind: 'optimal' };
         this.dual.weights.reset();
-        this.currentStage = 'dual';
+        this.enterDual();
         return undefined;
       }
       this.enterPrimal();
@@ -214,8 +215,23 @@ export class SimplexSolver {
     primal.restart();
   }
 
+  private enterDual(): void {
+    this.currentStage = 'dual';
+    this.dual.restart();
+  }
+
+  /** The dual algorithm goes round in circles: the primal one, which has rules that end for certain, goes on from here. */
+  private leaveDual(): undefined {
+    const { iterate } = this;
+    iterate.restoreBounds();
+    iterate.costs.restore();
+    iterate.refactorize();
+    this.enterPrimal();
+  }
+
   private enterDualPhaseOne(): void {
     this.currentStage = 'dual phase one';
+    this.dual.restart();
     this.iterate.boxBounds();
   }
 
