@@ -90,7 +90,6 @@ function removeColumn(f: LuFactors, column: number): void {
     upperRowIndex[place] = upperRowIndex[last];
     upperRowValue[place] = upperRowValue[last];
   }
-  f.upperEntryCount -= upperEnd[column] - upperStart[column];
   upperEnd[column] = upperStart[column];
 }
 
@@ -104,7 +103,6 @@ function removeRow(f: LuFactors, row: number): void {
     upperIndex[place] = upperIndex[last];
     upperValue[place] = upperValue[last];
   }
-  f.upperEntryCount -= upperRowEnd[row] - upperRowStart[row];
   upperRowEnd[row] = upperRowStart[row];
 }
 
@@ -121,7 +119,6 @@ function insertSpike(f: LuFactors, column: number, spike: PackedVector): void {
     f.upperRowIndex[place] = column;
     f.upperRowValue[place] = spike.value[k];
   }
-  f.upperEntryCount += at - f.upperSize;
   f.upperEnd[column] = f.upperSize = at;
 }
 

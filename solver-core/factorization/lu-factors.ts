@@ -59,9 +59,6 @@ export class LuFactors {
   /** Length m, all 0 between updates. */
   readonly scratchColumn: Float64Array;
 
-  /** Live entries of U without the diagonal. */
-  upperEntryCount = 0;
-
   constructor(
     /** m: order of the basis matrix. */
     readonly rowCount: number,
@@ -96,7 +93,6 @@ export class LuFactors {
     this.upperRowSize = 0;
     this.etaCount = 0;
     this.etaStart[0] = 0;
-    this.upperEntryCount = 0;
   }
 
   reserveLower(additional: number): void {
@@ -169,7 +165,6 @@ export class LuFactors {
     this.upperRowIndex = grownInt32(this.upperRowIndex, at);
     this.upperRowValue = grownFloat64(this.upperRowValue, at);
     this.upperRowSize = at;
-    this.upperEntryCount = this.upperSize;
     for (let k = 0; k < this.upperCount; k++) {
       const pivotRow = this.upperOrder[k];
       for (let entry = upperStart[pivotRow]; entry < upperEnd[pivotRow]; entry++) {
